@@ -1,0 +1,1 @@
+//! What a person at a station meets, reckoned from the record.

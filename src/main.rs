@@ -1,0 +1,5 @@
+//! The command line of doorglow; everything happens in the library.
+
+fn main() -> std::process::ExitCode {
+    doorglow::cli::main()
+}

@@ -1,0 +1,1 @@
+//! The fire physics: pure functions, one file per phenomenon, no state.

@@ -1,0 +1,1 @@
+//! Moments of a run: what happened when, read off the record.

@@ -1,0 +1,1 @@
+//! Results as text, tables and plots: bytes first, files last.

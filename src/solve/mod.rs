@@ -1,0 +1,1 @@
+//! The solver: state layout, derivative, pressure balance, events, integration, ledger.
