@@ -4,7 +4,7 @@
 
 use super::layout::{Account, ItemPlace, LOWER, Layout, UPPER};
 use crate::physics::combustion::{Formula, Reaction};
-use crate::physics::conduction::{Grid, Sides, grid};
+use crate::physics::conduction::{Grid, grid};
 use crate::physics::gas::{self, GasTable};
 use crate::physics::item::ItemModel;
 use crate::physics::plume::Law;
@@ -188,7 +188,7 @@ impl Building {
             .collect();
         let gas = GasTable::new(&vapours);
         let open = &plan.open_air;
-        let vapour = humidity::mole_fraction(open.temperature, open.humidity, open.pressure);
+        let vapour = humidity::vapour_fraction(open.temperature, open.humidity, open.pressure);
         let air = gas::moist_air(vapour, gas.len());
         let air_density =
             open.pressure / (gas.mixture_gas_constant(&air) * open.temperature);
@@ -382,7 +382,7 @@ fn space(room: &Room, plan: &Plan) -> Hull {
     }
 }
 
-fn lining_grid(lining: &Lining, sides: Sides) -> Result<Grid, PlanFault> {
+fn lining_grid(lining: &Lining, two_sided: bool) -> Result<Grid, PlanFault> {
     let courses: Vec<conduction::Course> = lining
         .courses
         .iter()
@@ -393,7 +393,7 @@ fn lining_grid(lining: &Lining, sides: Sides) -> Result<Grid, PlanFault> {
             heat_capacity: c.heat_capacity,
         })
         .collect();
-    grid(&courses, sides).ok_or_else(|| PlanFault::Lining {
+    grid(&courses, two_sided).ok_or_else(|| PlanFault::Lining {
         lining: lining.name.clone(),
         fault: "needs at least one course, with positive numbers".into(),
     })
@@ -418,7 +418,7 @@ fn slabs(plan: &Plan, rooms: &mut [Hull]) -> Result<Vec<Slab>, PlanFault> {
         }
         for (lining, face, area) in parts {
             slabs.push(Slab {
-                grid: lining_grid(lining, Sides::One)?,
+                grid: lining_grid(lining, false)?,
                 area,
                 emissivity: lining.emissivity,
                 faces: [face, Face::Behind(room.behind)],
@@ -437,7 +437,7 @@ fn slabs(plan: &Plan, rooms: &mut [Hull]) -> Result<Vec<Slab>, PlanFault> {
                 top: (n + 1) as f64 * strip,
             };
             slabs.push(Slab {
-                grid: lining_grid(&wall.lining, Sides::Both)?,
+                grid: lining_grid(&wall.lining, true)?,
                 area: wall.length * strip,
                 emissivity: wall.lining.emissivity,
                 faces: [face(a), face(b)],

@@ -9,7 +9,7 @@ use crate::physics::combustion::Reaction;
 use crate::physics::enclosure::black;
 use crate::physics::extinction::{burning_factor, limiting_oxygen};
 use crate::physics::gas::{CO, CO2, FIRST_FUEL, H2O, N2, O2, SOOT};
-use crate::physics::growth::burnout;
+use crate::physics::growth::{burn_out, t_squared};
 use crate::physics::item::{
     Fire, Surroundings, clock_rate, fire_rates, lower_share, release_factors,
 };
@@ -57,7 +57,7 @@ pub struct ItemRates {
 pub fn free_release(curve: &Curve, clock: f64) -> f64 {
     let t = clock.max(0.0);
     match curve {
-        Curve::Growth { alpha, peak } => (alpha * t * t).min(*peak),
+        Curve::Growth { alpha, peak } => t_squared(*alpha, *peak, t),
         Curve::Table(points) => table(points, t),
     }
 }
@@ -221,9 +221,8 @@ fn free(item: &Item, plan: &Plan, building: &Building, index: usize, time: f64, 
     match &item.burning {
         Burning::Growing(curve) => {
             let clock = y[building.layout.item(index, ItemPlace::Progress)];
-            let mass = y[building.layout.item(index, ItemPlace::Mass)];
-            let left = (mass / (plan.choices.burnout_share * source.mass)).max(0.0);
-            free_release(curve, clock) * burnout(left)
+            let mass = y[building.layout.item(index, ItemPlace::Mass)].max(0.0);
+            free_release(curve, clock) * burn_out(mass, source.mass, plan.choices.burnout_share)
         }
         Burning::AsGiven(curve) => free_release(curve, time - item.ignition),
         Burning::Burner { rate, ramp, .. } => {
