@@ -2,9 +2,11 @@
 
 pub mod cold_front;
 pub mod combustion;
+pub mod conduction;
 pub mod emissivity;
 pub mod extinction;
 pub mod growth;
+pub mod hand;
 pub mod humidity;
 pub mod leakage;
 pub mod plume;
