@@ -1,5 +1,7 @@
 //! Burning of a kilogram of volatiles, layer burning and the flame limit.
 
+#![allow(clippy::unwrap_used)]
+
 use doorglow::physics::combustion::{
     CARBON, Formula, HYDROGEN, NITROGEN, OXYGEN, Reaction, ReactionFault, complete_heat_per_oxygen,
     layer_burning,

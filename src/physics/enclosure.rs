@@ -55,8 +55,18 @@ pub fn shape(width: f64, length: f64, height: f64, interface: f64, ceiling_floor
     let cross = (1.0 - a) - (b - c);
     let view = [
         [0.0, 1.0 - a, a - c, c],
-        [up * (1.0 - a), 1.0 - 2.0 * up * (1.0 - a), up * cross, up * (b - c)],
-        [low * (a - c), low * cross, 1.0 - 2.0 * low * (1.0 - b), low * (1.0 - b)],
+        [
+            up * (1.0 - a),
+            1.0 - 2.0 * up * (1.0 - a),
+            up * cross,
+            up * (b - c),
+        ],
+        [
+            low * (a - c),
+            low * cross,
+            1.0 - 2.0 * low * (1.0 - b),
+            low * (1.0 - b),
+        ],
         [c, b - c, 1.0 - b, 0.0],
     ];
     Shape { area, view }
@@ -76,7 +86,11 @@ pub fn point_shares(width: f64, length: f64, height: f64, interface: f64, source
     let ceiling = point_to_rectangle(width, length, (height - source).max(1e-3));
     let floor = point_to_rectangle(width, length, source.max(1e-3));
     let plane = point_to_rectangle(width, length, (interface - source).abs().max(1e-6));
-    let above = if source < interface { plane } else { 1.0 - plane };
+    let above = if source < interface {
+        plane
+    } else {
+        1.0 - plane
+    };
     let upper = (above - ceiling).max(0.0);
     let lower = (1.0 - above - floor).max(0.0);
     let total = ceiling + upper + lower + floor;
@@ -113,7 +127,11 @@ impl Enclosure {
         for i in 0..4 {
             for j in 0..4 {
                 let view = shape.view[i][j];
-                let clear = if THROUGH_LAYER[i][j] { 1.0 - emissivity } else { 1.0 };
+                let clear = if THROUGH_LAYER[i][j] {
+                    1.0 - emissivity
+                } else {
+                    1.0
+                };
                 exchange[(i, j)] = view * clear;
                 layer[i] += view * (1.0 - clear) * layer_emission;
             }

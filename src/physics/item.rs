@@ -96,7 +96,8 @@ pub fn release_factors(
     ReleaseFactors {
         flaming: flamed * (around.oxygen_ratio.max(0.0).powf(model.flux_exponent) + e),
         gasified: (1.0 - flamed) * excess,
-        glowing: model.ember_release * fire.embers.max(0.0) * around.oxygen / (around.oxygen + 0.03),
+        glowing: model.ember_release * fire.embers.max(0.0) * around.oxygen
+            / (around.oxygen + 0.03),
     }
 }
 
@@ -108,12 +109,7 @@ pub fn clock_rate(model: &ItemModel, fire: Fire, around: &Surroundings, doubling
 
 /// Rates of change of flamed share and embers, 1/s. `with_embers` is false for
 /// a gas burner and for a rate as given.
-pub fn fire_rates(
-    model: &ItemModel,
-    fire: Fire,
-    around: &Surroundings,
-    with_embers: bool,
-) -> Fire {
+pub fn fire_rates(model: &ItemModel, fire: Fire, around: &Surroundings, with_embers: bool) -> Fire {
     let f = fire.flamed;
     let f0 = model.smallest_flame;
     let e = if with_embers { fire.embers } else { 0.0 };

@@ -4,12 +4,17 @@ use std::f64::consts::PI;
 
 /// View factor between two equal, aligned, parallel rectangles.
 ///
-/// `X = width/distance`, `Y = length/distance`:
-/// `F = 2/(pi X Y) { ln sqrt[(1+X^2)(1+Y^2)/(1+X^2+Y^2)]
-///  + X sqrt(1+Y^2) atan(X/sqrt(1+Y^2)) + Y sqrt(1+X^2) atan(Y/sqrt(1+X^2))
-///  - X atan X - Y atan Y }` (exact; Siegel and Howell, from memory). All in m;
-/// the result lies between 0 and 1. Touching rectangles (`distance <= 0`) give
-/// 1, a rectangle without area gives 0.
+/// With `X = width/distance`, `Y = length/distance`:
+///
+/// ```text
+/// F = 2/(pi X Y) { ln sqrt[(1+X^2)(1+Y^2)/(1+X^2+Y^2)]
+///     + X sqrt(1+Y^2) atan(X/sqrt(1+Y^2)) + Y sqrt(1+X^2) atan(Y/sqrt(1+X^2))
+///     - X atan X - Y atan Y }
+/// ```
+///
+/// Exact; Siegel and Howell, from memory. All in m; the result lies between 0
+/// and 1. Touching rectangles (`distance <= 0`) give 1, a rectangle without
+/// area gives 0.
 #[must_use]
 pub fn parallel_rectangles(width: f64, length: f64, distance: f64) -> f64 {
     if width <= 0.0 || length <= 0.0 {

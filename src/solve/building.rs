@@ -190,9 +190,12 @@ impl Building {
         let open = &plan.open_air;
         let vapour = humidity::vapour_fraction(open.temperature, open.humidity, open.pressure);
         let air = gas::moist_air(vapour, gas.len());
-        let air_density =
-            open.pressure / (gas.mixture_gas_constant(&air) * open.temperature);
-        let reactions = plan.fuels.iter().map(reaction).collect::<Result<Vec<_>, _>>()?;
+        let air_density = open.pressure / (gas.mixture_gas_constant(&air) * open.temperature);
+        let reactions = plan
+            .fuels
+            .iter()
+            .map(reaction)
+            .collect::<Result<Vec<_>, _>>()?;
         let (oxygen_share, carbon_share) = atom_shares(plan);
         let mut rooms: Vec<Hull> = plan.rooms.iter().map(|r| space(r, plan)).collect();
         for room in &mut rooms {
@@ -285,7 +288,11 @@ impl Building {
         ] {
             scale[layout.account(account)] = mass;
         }
-        for account in [Account::EnergyGained, Account::EnergyLost, Account::HeatReleased] {
+        for account in [
+            Account::EnergyGained,
+            Account::EnergyLost,
+            Account::HeatReleased,
+        ] {
             scale[layout.account(account)] = mass * 1e6;
         }
         scale
@@ -308,12 +315,16 @@ fn item_model(c: &Choices) -> ItemModel {
 }
 
 fn reaction(fuel: &Fuel) -> Result<Reaction, PlanFault> {
-    Reaction::new(formula(fuel), fuel.heat_of_combustion, fuel.co_yield, fuel.soot_yield).map_err(
-        |fault| PlanFault::Fuel {
-            fuel: fuel.name.clone(),
-            fault: fault.to_string(),
-        },
+    Reaction::new(
+        formula(fuel),
+        fuel.heat_of_combustion,
+        fuel.co_yield,
+        fuel.soot_yield,
     )
+    .map_err(|fault| PlanFault::Fuel {
+        fuel: fuel.name.clone(),
+        fault: fault.to_string(),
+    })
 }
 
 fn formula(fuel: &Fuel) -> Formula {
@@ -339,7 +350,14 @@ fn atom_shares(plan: &Plan) -> (Vec<f64>, Vec<f64>) {
         OXYGEN / m[gas::CO],
         0.0,
     ];
-    let mut carbon = vec![0.0, 0.0, CARBON / m[gas::CO2], 0.0, CARBON / m[gas::CO], 1.0];
+    let mut carbon = vec![
+        0.0,
+        0.0,
+        CARBON / m[gas::CO2],
+        0.0,
+        CARBON / m[gas::CO],
+        1.0,
+    ];
     for fuel in &plan.fuels {
         let molar = formula(fuel).molar_mass();
         oxygen.push(fuel.oxygen * OXYGEN / molar);
@@ -472,7 +490,11 @@ fn source(item: &Item, plan: &Plan) -> Source {
         Burning::AsGiven(curve) => (curve_peak(curve), None, false),
         Burning::Burner { rate, side, .. } => {
             // Diameter of the circle with the area of the square.
-            (*rate, Some(side * (4.0 / std::f64::consts::PI).sqrt()), false)
+            (
+                *rate,
+                Some(side * (4.0 / std::f64::consts::PI).sqrt()),
+                false,
+            )
         }
     };
     let base = diameter.unwrap_or_else(|| base_diameter(peak, fuel.release_per_area));

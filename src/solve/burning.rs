@@ -170,7 +170,8 @@ pub fn item(
     // The base's share of air from the lower layer follows from what the item
     // would offer with the oxygen it breathes now.
     let ratio = oxygen / building.air_oxygen;
-    let offered = free * fire.flamed.clamp(0.0, 1.0) * if source.growing { ratio * ratio } else { 1.0 };
+    let offered =
+        free * fire.flamed.clamp(0.0, 1.0) * if source.growing { ratio * ratio } else { 1.0 };
     let needed = plan.choices.base_air * offered / HEAT_PER_AIR;
     let share = lower_share(scene.plume(offered, rise), needed) * low.available;
     let zone_oxygen = share * low.oxygen + (1.0 - share) * up.oxygen;
@@ -190,7 +191,15 @@ pub fn item(
     let mut out = release(&scene, source.growing, free, fire, &around);
     out.lower_share = share;
     let (flaming, glowing) = (out.rates[0], out.rates[1]);
-    burn_at_item(&scene, changes, &mut out, item, (flaming, glowing), rise, source.room);
+    burn_at_item(
+        &scene,
+        changes,
+        &mut out,
+        item,
+        (flaming, glowing),
+        rise,
+        source.room,
+    );
 
     let model = &building.model;
     let rates = fire_rates(model, fire, &around, source.growing);
@@ -290,7 +299,10 @@ fn burn_at_item(
     let share = out.lower_share;
     let oxygen_low = scene.layers.fractions(lower)[O2].max(0.0);
     let oxygen_up = scene.layers.fractions(upper)[O2].max(0.0);
-    let below = min8(flaming + share * glowing, plume * oxygen_low * heat_per_oxygen);
+    let below = min8(
+        flaming + share * glowing,
+        plume * oxygen_low * heat_per_oxygen,
+    );
     let factor = scene.flame_factor(up.oxygen, up.temperature);
     let rest = (flaming + share * glowing - below).max(0.0);
     let above = min8(rest * factor, within * oxygen_up * heat_per_oxygen);
@@ -332,9 +344,8 @@ pub fn in_layer(
         return 0.0;
     }
     // Oxygen use rate, kg/s; harmonic in fuel demand and oxygen at hand.
-    let use_rate = ignition * gas.mass * demand * oxygen
-        / (demand + oxygen)
-        / plan.choices.layer_mixing_time;
+    let use_rate =
+        ignition * gas.mass * demand * oxygen / (demand + oxygen) / plan.choices.layer_mixing_time;
     let mut heat = 0.0;
     for (f, reaction) in building.reactions.iter().enumerate() {
         let power = use_rate * fractions[FIRST_FUEL + f].max(0.0) / demand * reaction.heat;

@@ -285,10 +285,15 @@ impl<'a> Model<'a> {
         if heat <= 0.0 {
             return 0.0;
         }
-        let power =
-            wanted * fuel / (fuel + JET_FUEL) * oxygen / (oxygen + JET_OXYGEN);
+        let power = wanted * fuel / (fuel + JET_FUEL) * oxygen / (oxygen + JET_OXYGEN);
         for f in 0..reactions.len() {
-            burn(&mut self.changes, upper, &reactions[f], f, power * heat_of(f) / heat);
+            burn(
+                &mut self.changes,
+                upper,
+                &reactions[f],
+                f,
+                power * heat_of(f) / heat,
+            );
         }
         power
     }
@@ -301,10 +306,12 @@ impl<'a> Model<'a> {
             let (low, up) = (self.layers.layers[l], self.layers.layers[u]);
             let inverted = smoothstep((low.temperature - up.temperature) / 5.0);
             if inverted > 0.0 {
-                let volume = inverted * low.available * up.available * low.volume.min(up.volume)
-                    / OVERTURN;
-                self.changes.transfer(&self.layers, l, u, volume * low.density);
-                self.changes.transfer(&self.layers, u, l, volume * up.density);
+                let volume =
+                    inverted * low.available * up.available * low.volume.min(up.volume) / OVERTURN;
+                self.changes
+                    .transfer(&self.layers, l, u, volume * low.density);
+                self.changes
+                    .transfer(&self.layers, u, l, volume * up.density);
             }
         }
     }
@@ -318,7 +325,8 @@ impl<'a> Model<'a> {
                 for k in 0..2 {
                     for d in 0..2 {
                         let flow = stream.flow[k][d];
-                        self.changes.transfer(&self.layers, source[k], into[d], flow);
+                        self.changes
+                            .transfer(&self.layers, source[k], into[d], flow);
                     }
                 }
                 let [l, u] = into;
@@ -469,9 +477,15 @@ impl<'a> Model<'a> {
         set(Account::MassGained, inflow + mass);
         set(Account::MassLost, net.iter().sum::<f64>() + inflow);
         set(Account::OxygenGained, inflow * dot(fractions, oxygen) + o);
-        set(Account::OxygenLost, dot(net, oxygen) + inflow * dot(fractions, oxygen));
+        set(
+            Account::OxygenLost,
+            dot(net, oxygen) + inflow * dot(fractions, oxygen),
+        );
         set(Account::CarbonGained, inflow * dot(fractions, carbon) + c);
-        set(Account::CarbonLost, dot(net, carbon) + inflow * dot(fractions, carbon));
+        set(
+            Account::CarbonLost,
+            dot(net, carbon) + inflow * dot(fractions, carbon),
+        );
         let released = self.heat_released();
         set(Account::HeatReleased, released);
         set(Account::EnergyGained, released + inflow * air.enthalpy);

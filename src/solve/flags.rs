@@ -85,7 +85,9 @@ impl Watch {
             let hull = &model.building.rooms[room];
             let low = &model.layers.layers[2 * room + LOWER];
             let up = &model.layers.layers[2 * room + UPPER];
-            let fuel: f64 = model.layers.fractions(2 * room + UPPER)[FIRST_FUEL..].iter().sum();
+            let fuel: f64 = model.layers.fractions(2 * room + UPPER)[FIRST_FUEL..]
+                .iter()
+                .sum();
             let long = hull.length.max(hull.width) / hull.length.min(hull.width);
             let now = [
                 model.balance.pressure(room).abs() > HIGH_PRESSURE,

@@ -29,7 +29,10 @@ pub fn joined(plan: &Plan, stands: &[Stand]) -> Vec<Vec<usize>> {
             && stand.coefficient_width > 0.0
         {
             let (keep, drop) = (label[a.0].min(label[b.0]), label[a.0].max(label[b.0]));
-            label.iter_mut().filter(|l| **l == drop).for_each(|l| *l = keep);
+            label
+                .iter_mut()
+                .filter(|l| **l == drop)
+                .for_each(|l| *l = keep);
         }
     }
     (0..n)
@@ -197,11 +200,12 @@ fn even_out(
         }
         let gain: Vec<f64> = match group_of(room) {
             Some(group) => {
-                let want = |r: usize| {
-                    building.rooms[r].volume * (after[r] - before[r]).max(0.0)
-                };
+                let want = |r: usize| building.rooms[r].volume * (after[r] - before[r]).max(0.0);
                 let whole: f64 = groups[group].rooms.iter().map(|r| want(*r)).sum();
-                pools[group].iter().map(|m| m * want(room) / whole).collect()
+                pools[group]
+                    .iter()
+                    .map(|m| m * want(room) / whole)
+                    .collect()
             }
             None => {
                 let ratio = (building.pressure + before[room]) / (building.pressure + after[room]);
@@ -219,4 +223,3 @@ fn even_out(
         }
     }
 }
-

@@ -102,7 +102,11 @@ pub struct Scene<'a> {
 impl Scene<'_> {
     fn surface(&self, slab: usize, back: bool) -> f64 {
         let nodes = &self.y[self.building.layout.slab(slab)];
-        if back { nodes[nodes.len() - 1] } else { nodes[0] }
+        if back {
+            nodes[nodes.len() - 1]
+        } else {
+            nodes[0]
+        }
     }
 
     fn above(&self, opening: &Opening, room: usize, first: usize) -> f64 {
@@ -181,8 +185,18 @@ impl Scene<'_> {
             let emission = slab.emissivity * black(self.surface(f.slab, f.back));
             let reflection = 1.0 - slab.emissivity;
             match f.face {
-                Face::Ceiling(_) => faces[CEILING] = enclosure::Face { emission, reflection },
-                Face::Floor(_) => faces[FLOOR] = enclosure::Face { emission, reflection },
+                Face::Ceiling(_) => {
+                    faces[CEILING] = enclosure::Face {
+                        emission,
+                        reflection,
+                    }
+                }
+                Face::Floor(_) => {
+                    faces[FLOOR] = enclosure::Face {
+                        emission,
+                        reflection,
+                    }
+                }
                 Face::Wall { bottom, top, .. } => {
                     let above = share_above(bottom, top, interface);
                     walls[0].add(slab.area * above, emission, reflection);
@@ -220,16 +234,14 @@ impl Scene<'_> {
             let interface = self.layers.interface[room];
             let source = (item.surface_height + 0.5 * rate.flame_height)
                 .clamp(0.02 * hull.height, 0.9 * hull.height);
-            let shares =
-                point_shares(hull.width, hull.length, hull.height, interface, source);
+            let shares = point_shares(hull.width, hull.length, hull.height, interface, source);
             let this = &mut radiation[room];
             let inside = ((source - interface) / (hull.height - interface)).clamp(0.0, 1.0);
             let clear_up = 1.0 - this.emissivity;
             let clear_down = 1.0 - this.emissivity * inside;
             let clear = [clear_up, clear_up, clear_down, clear_down];
-            let incident = Vector4::from_fn(|i, _| {
-                rate.radiated * shares[i] * clear[i] / this.shape.area[i]
-            });
+            let incident =
+                Vector4::from_fn(|i, _| rate.radiated * shares[i] * clear[i] / this.shape.area[i]);
             this.whole += this.enclosure.from_incident(&incident);
             this.flames += rate.radiated;
         }
@@ -390,8 +402,7 @@ impl Scene<'_> {
         let mut lost = 0.0;
         for (s, slab) in self.building.slabs.iter().enumerate() {
             if let Face::Behind(temperature) = slab.faces[1] {
-                let flux =
-                    self.choices.convection_behind * (temperature - self.surface(s, true));
+                let flux = self.choices.convection_behind * (temperature - self.surface(s, true));
                 fluxes[s][1] = flux;
                 lost -= flux * slab.area;
             }

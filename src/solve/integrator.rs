@@ -152,10 +152,7 @@ pub fn integrate<E: Equations>(
         time: stretch.start,
         last_step: stretch.first_step,
     });
-    let scaled = DVector::from_iterator(
-        state.len(),
-        state.iter().zip(scale).map(|(y, s)| y / s),
-    );
+    let scaled = DVector::from_iterator(state.len(), state.iter().zip(scale).map(|(y, s)| y / s));
     let length = stretch.end - stretch.start;
     let mut model = ContinuousOutputModel::default();
     let mut stepper = Dopri5::from_param(
@@ -198,7 +195,11 @@ pub fn integrate<E: Equations>(
     Solution {
         model,
         scale: scale.to_vec(),
-        time: if outcome == Outcome::Reached { stretch.end } else { inner.time },
+        time: if outcome == Outcome::Reached {
+            stretch.end
+        } else {
+            inner.time
+        },
         state,
         outcome,
         evaluations: stats.map_or(0, |s| u64::from(s.num_eval)),

@@ -51,10 +51,15 @@ mod tests {
     #[test]
     fn verify_against_an_independent_library() {
         let n = 5;
-        let entries: Vec<f64> = (0..n * n).map(|i| ((i * 7919 + 13) % 101) as f64 - 50.0).collect();
+        let entries: Vec<f64> = (0..n * n)
+            .map(|i| ((i * 7919 + 13) % 101) as f64 - 50.0)
+            .collect();
         let right: Vec<f64> = (0..n).map(|i| i as f64 - 1.5).collect();
         let matrix = DMatrix::from_row_slice(n, n, &entries);
-        let expected = matrix.lu().solve(&DVector::from_row_slice(&right)).expect("regular");
+        let expected = matrix
+            .lu()
+            .solve(&DVector::from_row_slice(&right))
+            .expect("regular");
         let (mut a, mut b) = (entries, right);
         assert!(solve_in_place(&mut a, &mut b, n));
         for i in 0..n {

@@ -150,9 +150,10 @@ impl Observer {
         self.put(s, Q::FlowBackward, backward.total());
         let plane = passage.bands.neutral_plane();
         self.put(s, Q::NeutralPlane, plane.unwrap_or(f64::NAN));
-        for (direction, stream, quantity) in
-            [(0, forward, Q::SpeedForward), (1, backward, Q::SpeedBackward)]
-        {
+        for (direction, stream, quantity) in [
+            (0, forward, Q::SpeedForward),
+            (1, backward, Q::SpeedBackward),
+        ] {
             let source = passage.source(direction);
             let density = mean(stream, |k| model.layers.layers[source[k]].density);
             // Bernoulli speed at the opening.

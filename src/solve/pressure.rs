@@ -76,9 +76,7 @@ impl Passage {
     /// A passage for an opening of the plan.
     pub fn new(opening: &Opening, outside: usize) -> Self {
         let layers = |space| match space {
-            Space::Room(room) => {
-                [2 * room.0 + LOWER, 2 * room.0 + UPPER]
-            }
+            Space::Room(room) => [2 * room.0 + LOWER, 2 * room.0 + UPPER],
             Space::OpenAir => [outside; 2],
         };
         let room = |space| match space {
@@ -325,7 +323,11 @@ impl Balance {
     fn groups(&mut self, problem: &Problem<'_>, unknowns: usize) {
         for (g, group) in problem.groups.iter().enumerate() {
             let at = self.rooms + g;
-            let volume: f64 = group.rooms.iter().map(|r| problem.building.rooms[*r].volume).sum();
+            let volume: f64 = group
+                .rooms
+                .iter()
+                .map(|r| problem.building.rooms[*r].volume)
+                .sum();
             let mut mean = 0.0;
             for &r in &group.rooms {
                 let weight = problem.building.rooms[r].volume / volume;
@@ -381,7 +383,11 @@ impl Passage {
         );
         self.streams = [Stream::default(); 2];
         for direction in 0..2 {
-            let interface = if direction == 0 { second.interface } else { first.interface };
+            let interface = if direction == 0 {
+                second.interface
+            } else {
+                first.interface
+            };
             self.gather(problem, direction, interface);
         }
     }
@@ -407,7 +413,10 @@ impl Passage {
                 .clamp(0.0, 1.0);
             let own = usize::from(band.from_upper);
             let weight = layers[source[own]].available;
-            for (k, flow) in [(own, band.flow * weight), (1 - own, band.flow * (1.0 - weight))] {
+            for (k, flow) in [
+                (own, band.flow * weight),
+                (1 - own, band.flow * (1.0 - weight)),
+            ] {
                 if !inside {
                     stream.flow[k][LOWER] += flow;
                     continue;
@@ -420,10 +429,9 @@ impl Passage {
                 let gas = &layers[source[k]];
                 let warmer = gas.temperature - layers[into[LOWER]].temperature;
                 let cooler = layers[into[UPPER]].temperature - gas.temperature;
-                for (part, flow, excess) in [
-                    (&mut rising, up, warmer),
-                    (&mut falling, jet - up, cooler),
-                ] {
+                for (part, flow, excess) in
+                    [(&mut rising, up, warmer), (&mut falling, jet - up, cooler)]
+                {
                     part[0] += flow;
                     part[1] += flow * gas.heat_capacity * excess.max(0.0);
                     part[2] += flow * middle;

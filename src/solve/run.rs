@@ -81,7 +81,15 @@ pub fn run(
         rates: vec![0.0; state.len()],
         every: every.max(1e-3),
     };
-    let ended = stretches(plan, &building, &schedule, &scale, &mut driver, &mut state, &mut out);
+    let ended = stretches(
+        plan,
+        &building,
+        &schedule,
+        &scale,
+        &mut driver,
+        &mut state,
+        &mut out,
+    );
     let pressures = mean_pressures(&driver.model, &state);
     let at_end = content(&building, &mut driver.model.layers, &state, &pressures);
     out.work.evaluations = driver.evaluations;
@@ -108,7 +116,12 @@ struct Output {
 
 impl Output {
     fn row(&mut self, driver: &mut Driver<'_, '_>, time: f64, y: &[f64]) {
-        if self.observer.time.last().is_some_and(|last| time <= *last + 1e-9) {
+        if self
+            .observer
+            .time
+            .last()
+            .is_some_and(|last| time <= *last + 1e-9)
+        {
             return;
         }
         // Output evaluations are not work of the integrator.
@@ -150,7 +163,13 @@ fn widest(plan: &Plan, schedule: &Schedule, start: f64, end: f64) -> Vec<Stand> 
     early
         .into_iter()
         .zip(late)
-        .map(|(a, b)| if a.coefficient_width > b.coefficient_width { a } else { b })
+        .map(|(a, b)| {
+            if a.coefficient_width > b.coefficient_width {
+                a
+            } else {
+                b
+            }
+        })
         .collect()
 }
 
@@ -260,11 +279,19 @@ fn ledger(building: &Building, y: &[f64], start: &[f64; 4], end: &[f64; 4]) -> L
     let account = |a| y[building.layout.account(a)];
     let close = |i: usize, gained, lost, base: f64| {
         let (gained, lost): (f64, f64) = (account(gained), account(lost));
-        let through = if base > 0.0 { base } else { gained.abs().max(lost.abs()) };
+        let through = if base > 0.0 {
+            base
+        } else {
+            gained.abs().max(lost.abs())
+        };
         let content = start[i].abs().max(end[i].abs());
         // Relative to what went through, or to the content where next to
         // nothing did.
-        let over = if through > 1e-3 * content { through } else { content.max(1e-12) };
+        let over = if through > 1e-3 * content {
+            through
+        } else {
+            content.max(1e-12)
+        };
         Closure {
             at_start: start[i],
             at_end: end[i],

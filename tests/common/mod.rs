@@ -84,7 +84,14 @@ pub fn room(name: &str, width: f64, length: f64, height: f64, all: &Lining) -> R
 }
 
 /// A door.
-pub fn door(name: &str, from: usize, to: Option<usize>, width: f64, head: f64, open: bool) -> Opening {
+pub fn door(
+    name: &str,
+    from: usize,
+    to: Option<usize>,
+    width: f64,
+    head: f64,
+    open: bool,
+) -> Opening {
     Opening {
         name: name.into(),
         kind: OpeningKind::Door,
@@ -140,7 +147,13 @@ pub fn burner(room: usize, rate: f64, side: f64, surface: f64, corner: bool) -> 
 }
 
 /// A plan without actions and stations.
-pub fn plan(end: f64, rooms: Vec<Room>, openings: Vec<Opening>, fuels: Vec<Fuel>, items: Vec<Item>) -> Plan {
+pub fn plan(
+    end: f64,
+    rooms: Vec<Room>,
+    openings: Vec<Opening>,
+    fuels: Vec<Fuel>,
+    items: Vec<Item>,
+) -> Plan {
     Plan {
         title: "test".into(),
         end,
