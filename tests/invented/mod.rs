@@ -172,7 +172,9 @@ pub fn record() -> Record {
         add(subject, Quantity::GivenOff, &|t| {
             1.4e6 * (fire(t) + 0.12 * bump(t, 250.0, 800.0, 60.0))
         });
-        add(subject, Quantity::Burned, &move |t| scale * 1.35e6 * fire(t));
+        add(subject, Quantity::Burned, &move |t| {
+            scale * 1.35e6 * fire(t)
+        });
     }
     add(Subject::House, Quantity::AirCouldBurn, &|t| {
         6e4 + open(t) * 3.2e6 * (1.0 - (-(t - 480.0) / 20.0).exp())
@@ -273,8 +275,6 @@ fn stations(add: &mut Add<'_>, fire: &dyn Fn(f64) -> f64) {
     add(crew, Quantity::StationVisibility, &|t| {
         30.0 - 29.0 * smoke(t)
     });
-    add(crew, Quantity::StationOxygen, &|t| {
-        0.209 - 0.05 * smoke(t)
-    });
+    add(crew, Quantity::StationOxygen, &|t| 0.209 - 0.05 * smoke(t));
     add(crew, Quantity::StationFlux, &|t| 6e3 * fire(t));
 }

@@ -154,6 +154,9 @@ impl Canvas<'_> {
 
     /// A text in the reader's own sans-serif font.
     pub fn write(&mut self, text: &str, at: (f64, f64), writing: Writing) {
+        if text.is_empty() {
+            return;
+        }
         let style = if writing.bold {
             FontStyle::Bold
         } else {

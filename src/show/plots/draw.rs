@@ -104,7 +104,7 @@ fn draw_mark_lines(canvas: &mut Canvas<'_>, marks: &[PlacedMark], top: f64) {
             width: 1.0,
             stroke: Stroke::Solid,
         };
-        canvas.line(&[(mark.x, y - 6.0), (mark.x, top + 4.0)], pen);
+        canvas.line(&[(mark.x, y - 6.0), (mark.x, top)], pen);
         let at = (mark.x + 4.0, y);
         canvas.write(&mark.text, at, writing(MARK_SIZE, INK, Align::Start));
     }

@@ -10,7 +10,9 @@ pub const INK: RGBColor = RGBColor(0x22, 0x26, 0x2B);
 pub const SOFT_INK: RGBColor = RGBColor(0x5B, 0x63, 0x6B);
 /// Grid.
 pub const GRID: RGBColor = RGBColor(0xE4, 0xE7, 0xEA);
-/// Axes, leaders and the lines of actions.
+/// From the end of a curve to its label.
+pub const LEADER: RGBColor = RGBColor(0xC4, 0xC9, 0xCE);
+/// Axes and the lines of actions.
 pub const AXIS: RGBColor = RGBColor(0x8A, 0x92, 0x99);
 /// Limits and heights that a curve is read against.
 pub const LEVEL: RGBColor = RGBColor(0x5B, 0x63, 0x6B);

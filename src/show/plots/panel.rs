@@ -2,14 +2,15 @@
 
 use super::canvas::{Align, Canvas, Pen, Writing, fitted, text_width};
 use super::labels::spread;
-use super::palette::{AXIS, GRID, INK, LEVEL, SHADE, SOFT_INK, Stroke};
-use super::picture::{Mark, Panel, Picture};
+use super::palette::{AXIS, GRID, INK, LEADER, LEVEL, SHADE, SOFT_INK, Stroke};
+use super::picture::{Curve, Mark, Panel, Picture};
 use super::ticks::{TimeUnit, round_step, tick_text, ticks};
+use plotters::style::WHITE;
 
 /// Left edge of the axes, points.
 pub const LEFT: f64 = 64.0;
 /// Right edge of the axes, points.
-pub const RIGHT: f64 = 752.0;
+pub const RIGHT: f64 = 768.0;
 /// Width of the picture, points.
 pub const WIDTH: f64 = 1000.0;
 /// Room above the axes for the panel's heading, points.
@@ -33,7 +34,7 @@ impl Frame {
     /// The frame of a panel whose heading begins at `top`.
     pub fn new(panel: &Panel, top: f64, end: f64) -> Self {
         let (low, high) = value_range(panel);
-        let step = round_step(high - low, panel.height / 36.0);
+        let step = round_step(high - low, (panel.height / 25.0).min(8.0));
         Self {
             top: top + HEADING,
             bottom: top + HEADING + panel.height,
@@ -92,14 +93,8 @@ pub fn draw_panel(canvas: &mut Canvas<'_>, picture: &Picture, panel: &Panel, fra
     draw_marks(canvas, &picture.marks, frame);
     draw_levels(canvas, panel, frame);
     for curve in &panel.curves {
-        let pen = Pen {
-            colour: curve.colour,
-            strength: curve.strength,
-            width: f64::from(curve.width),
-            stroke: curve.stroke,
-        };
         for piece in pieces(&curve.points, frame) {
-            canvas.line(&piece, pen);
+            canvas.line(&piece, curve_pen(curve));
         }
     }
     draw_axes(canvas, frame);
@@ -152,7 +147,8 @@ fn draw_grid(canvas: &mut Canvas<'_>, frame: &Frame) {
 fn draw_marks(canvas: &mut Canvas<'_>, marks: &[Mark], frame: &Frame) {
     for mark in marks {
         let x = x_of(mark.time, frame.end);
-        canvas.line(&[(x, frame.top), (x, frame.bottom)], thin(AXIS));
+        let top = frame.top - HEADING - 8.0;
+        canvas.line(&[(x, top), (x, frame.bottom)], thin(AXIS));
     }
 }
 
@@ -196,47 +192,75 @@ fn draw_heading(canvas: &mut Canvas<'_>, panel: &Panel, frame: &Frame) {
         bold: true,
         ..writing(13.0, INK, Align::Start)
     };
+    // White behind the words, where the line of an action would cross them.
+    let width = text_width(&panel.heading, 14.0);
+    canvas.rectangle((LEFT, y - 9.0), (LEFT + width, y + 9.0), WHITE);
     canvas.write(&panel.heading, (LEFT, y), heading);
-    let note_at = RIGHT - 4.0;
-    canvas.write(
-        &panel.note,
-        (note_at, y),
-        writing(TICK_SIZE, SOFT_INK, Align::End),
-    );
+    let mut note = panel.note.clone();
+    if panel.curves.iter().any(|curve| ends_above(curve, frame)) {
+        note.push_str("; ↑ beyond the axis");
+    }
+    let width = text_width(&note, TICK_SIZE);
+    if width > 0.0 {
+        canvas.rectangle((RIGHT - 4.0 - width, y - 8.0), (RIGHT, y + 8.0), WHITE);
+    }
+    let looks = writing(TICK_SIZE, SOFT_INK, Align::End);
+    canvas.write(&note, (RIGHT - 4.0, y), looks);
 }
 
 fn draw_labels(canvas: &mut Canvas<'_>, panel: &Panel, frame: &Frame) {
-    let mut ends: Vec<(f64, &str, Pen)> = panel
+    let mut ends: Vec<(f64, String, Pen)> = panel
         .curves
         .iter()
-        .filter(|curve| !curve.label.is_empty())
-        .filter_map(|curve| {
-            let last = pieces(&curve.points, frame).pop()?.pop()?;
-            let pen = Pen {
-                colour: curve.colour,
-                strength: curve.strength,
-                width: f64::from(curve.width),
-                stroke: curve.stroke,
-            };
-            Some((last.1, curve.label.as_str(), pen))
-        })
+        .filter_map(|curve| curve_end(curve, frame))
         .collect();
     ends.extend(
         shown_levels(panel, frame)
-            .map(|level| (frame.y(level.value), level.label.as_str(), level_pen())),
+            .map(|level| (frame.y(level.value), level.label.clone(), level_pen())),
     );
     let wished: Vec<f64> = ends.iter().map(|end| end.0).collect();
     let placed = spread(&wished, LABEL_SPACING, frame.top + 4.0, frame.bottom - 4.0);
     for ((wish, label, pen), y) in ends.into_iter().zip(placed) {
         let (near, far) = (RIGHT + 3.0, RIGHT + 16.0);
-        canvas.line(&[(near, wish), (far, y)], thin(GRID));
+        canvas.line(&[(near, wish), (far, y)], thin(LEADER));
         canvas.line(&[(far, y), (far + 21.0, y)], pen);
-        let text = fitted(label, LABEL_SIZE, WIDTH - far - 32.0);
+        let text = fitted(&label, LABEL_SIZE, WIDTH - far - 32.0);
         canvas.write(
             &text,
             (far + 27.0, y),
             writing(LABEL_SIZE, INK, Align::Start),
         );
+    }
+}
+
+/// Height, words and pen of the label at the end of a curve.
+fn curve_end(curve: &Curve, frame: &Frame) -> Option<(f64, String, Pen)> {
+    if curve.label.is_empty() {
+        return None;
+    }
+    let last = pieces(&curve.points, frame).pop()?.pop()?;
+    let label = if ends_above(curve, frame) {
+        format!("{} ↑", curve.label)
+    } else {
+        curve.label.clone()
+    };
+    Some((last.1, label, curve_pen(curve)))
+}
+
+/// True when the curve has left the axes through the top and not come back.
+fn ends_above(curve: &Curve, frame: &Frame) -> bool {
+    let mut values = curve.points.iter().rev().map(|point| point.1);
+    values
+        .find(|value| value.is_finite())
+        .is_some_and(|value| value > frame.high)
+}
+
+fn curve_pen(curve: &Curve) -> Pen {
+    Pen {
+        colour: curve.colour,
+        strength: curve.strength,
+        width: f64::from(curve.width),
+        stroke: curve.stroke,
     }
 }
 

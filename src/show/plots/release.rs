@@ -4,6 +4,7 @@ use super::palette::{BLUE, INK, Stroke, VERMILION};
 use super::picture::{Curve, Panel, Picture, Shade};
 use super::{blank, points};
 use crate::plan::Plan;
+use crate::reading;
 use crate::record::{Quantity, Record, Subject};
 
 /// Heat release with the times short of air.
@@ -30,13 +31,13 @@ pub fn picture(record: &Record, plan: &Plan) -> Picture {
         height: 380.0,
         at_least: 100.0,
         // The air line may tower over the fire; it is cut where it says no more.
-        at_most: Some((1.5 * peak(&burned).max(peak(&given_off))).max(100.0)),
+        at_most: Some((1.25 * peak(&burned).max(peak(&given_off))).max(100.0)),
         curves: vec![
             line("incoming air could burn", air, BLUE, Stroke::Dashed, 2),
             line("given off as fuel", given_off, INK, Stroke::Dotted, 2),
             line("burned", burned, VERMILION, Stroke::Solid, 3),
         ],
-        shades: short_of_air(record),
+        shades: short_of_air(record, plan),
         ..Panel::default()
     }];
     picture
@@ -63,7 +64,16 @@ fn line(
     }
 }
 
-/// Spans in which less than half of the free rate is released.
-fn short_of_air(_record: &Record) -> Vec<Shade> {
-    Vec::new()
+/// Spans short of air, by the rule of [`crate::reading`].
+fn short_of_air(record: &Record, plan: &Plan) -> Vec<Shade> {
+    let end = record.time.last().copied().unwrap_or(0.0);
+    reading::summary(record, plan)
+        .short_of_air
+        .into_iter()
+        .map(|stretch| Shade {
+            from: stretch.from,
+            until: stretch.to.unwrap_or(end),
+            label: "short of air".to_owned(),
+        })
+        .collect()
 }

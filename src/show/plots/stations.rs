@@ -5,7 +5,7 @@ use super::picture::{Curve, Level, Panel, Picture};
 use super::{blank, points};
 use crate::plan::{Limits, Plan};
 use crate::record::{Quantity, Record, Subject};
-use crate::show::quantity::unit;
+use crate::show::quantity::{table_number, unit};
 use plotters::style::RGBColor;
 
 /// One picture for every station that the record has.
@@ -45,8 +45,8 @@ fn temperature(record: &Record, index: usize, limits: &Limits) -> Panel {
         heading: "Gas temperature at head height [°C]".to_owned(),
         at_least: 100.0,
         levels: vec![
-            level(quantity, limits.attention_temperature, "attention"),
-            level(quantity, limits.out_temperature, "out"),
+            level(quantity, limits.attention_temperature, "attention:"),
+            level(quantity, limits.out_temperature, "training: be out,"),
         ],
         ..one_line(record, index, quantity, "temperature", VERMILION, 170.0)
     }
@@ -58,7 +58,7 @@ fn visibility(record: &Record, index: usize, limits: &Limits) -> Panel {
         heading: "Visibility of a reflecting object [m]".to_owned(),
         note: "30 m and more is drawn as 30 m".to_owned(),
         at_least: 30.0,
-        levels: vec![level(quantity, limits.visibility, "limit")],
+        levels: vec![level(quantity, limits.visibility, "limit:")],
         ..one_line(record, index, quantity, "visibility", BLUE, 110.0)
     }
 }
@@ -68,7 +68,7 @@ fn oxygen(record: &Record, index: usize, limits: &Limits) -> Panel {
     Panel {
         heading: "Oxygen [% by volume, dry]".to_owned(),
         at_least: 21.0,
-        levels: vec![level(quantity, limits.oxygen, "limit")],
+        levels: vec![level(quantity, limits.oxygen, "limit:")],
         ..one_line(record, index, quantity, "oxygen", GREEN, 110.0)
     }
 }
@@ -85,7 +85,7 @@ fn level(quantity: Quantity, value: f64, what: &str) -> Level {
     let unit = unit(quantity.dimension());
     Level {
         value: unit.shown(value),
-        label: format!("{what}: {}", unit.text(value)),
+        label: format!("{what} {} {}", table_number(unit.shown(value)), unit.name),
     }
 }
 
