@@ -5,6 +5,7 @@ pub mod plots;
 pub mod quantity;
 mod record_csv;
 mod record_json;
+mod words;
 
 pub use record_csv::record_csv;
 pub use record_json::{SCHEMA_VERSION, record_json};

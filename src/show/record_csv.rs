@@ -1,6 +1,7 @@
 //! The record as a table for a spreadsheet.
 
 use super::quantity::{table_number, unit};
+use super::words::label;
 use crate::plan::Plan;
 use crate::record::{Column, Record};
 
@@ -27,18 +28,18 @@ pub fn record_csv(record: &Record, plan: &Plan) -> Result<Vec<u8>, csv::Error> {
         .map_err(|error| csv::Error::from(error.into_error()))
 }
 
-fn headings(record: &Record, _plan: &Plan) -> Vec<String> {
+fn headings(record: &Record, plan: &Plan) -> Vec<String> {
     let mut headings = vec!["time [s]".to_owned()];
-    headings.extend(record.columns.iter().map(|column| heading(record, column)));
+    headings.extend(record.columns.iter().map(|column| heading(record, plan, column)));
     headings
 }
 
-fn heading(record: &Record, column: &Column) -> String {
+fn heading(record: &Record, plan: &Plan, column: &Column) -> String {
     let unit = unit(column.quantity.dimension()).name;
     let unit = if unit.is_empty() { "-" } else { unit };
     format!(
         "{}: {} [{unit}]",
         record.name(column.subject),
-        column.quantity.label()
+        label(plan, column)
     )
 }

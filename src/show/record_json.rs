@@ -1,6 +1,7 @@
 //! The record as one JSON document: everything, unrounded, in SI.
 
 use super::quantity::si_unit;
+use super::words::label;
 use super::{CAUTION, PROGRAM_VERSION};
 use crate::plan::Plan;
 use crate::record::{Column, Ended, Record, Subject};
@@ -36,7 +37,7 @@ pub fn record_json(record: &Record, plan: &Plan, scenario_hash: &str) -> Result<
         } else {
             ","
         };
-        let line = serde_json::to_string(&History::of(record, column))?;
+        let line = serde_json::to_string(&History::of(record, plan, column))?;
         text.push_str(&format!("{line}{comma}\n"));
     }
     text.push_str("]\n}\n");
@@ -96,14 +97,14 @@ struct Times<'a> {
 struct History<'a> {
     kind: &'static str,
     of: &'a str,
-    quantity: &'static str,
+    quantity: String,
     unit: &'static str,
     meaning: &'static str,
     values: &'a [f64],
 }
 
 impl<'a> History<'a> {
-    fn of(record: &'a Record, column: &'a Column) -> Self {
+    fn of(record: &'a Record, plan: &Plan, column: &'a Column) -> Self {
         Self {
             kind: match column.subject {
                 Subject::House => "house",
@@ -113,7 +114,7 @@ impl<'a> History<'a> {
                 Subject::Station(_) => "station",
             },
             of: record.name(column.subject),
-            quantity: column.quantity.label(),
+            quantity: label(plan, column),
             unit: si_unit(column.quantity.dimension()),
             meaning: column.quantity.meaning(),
             values: &column.values,

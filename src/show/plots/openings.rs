@@ -5,6 +5,7 @@ use super::picture::{Curve, Level, Panel, Picture};
 use super::{blank, largest, points};
 use crate::plan::{Opening, OpeningKind, Plan, Space};
 use crate::record::{Quantity, Record, Subject};
+use crate::show::words::space_name;
 use plotters::style::RGBColor;
 
 /// One picture for every door and window that stands open at some time.
@@ -25,7 +26,7 @@ fn picture(record: &Record, plan: &Plan, index: usize) -> Picture {
         format!("opening_{}", opening.name),
         format!("Flow through {}", opening.name),
     );
-    let (from, to) = (space(plan, opening.from), space(plan, opening.to));
+    let (from, to) = (space_name(plan, opening.from), space_name(plan, opening.to));
     picture.panels = vec![
         Panel {
             heading: "Flow [kg/s]".to_owned(),
@@ -106,13 +107,6 @@ fn reference_level(plan: &Plan, opening: &Opening) -> f64 {
             plan.rooms[room.0].floor_level
         }
         (Space::OpenAir, Space::OpenAir) => 0.0,
-    }
-}
-
-fn space(plan: &Plan, space: Space) -> &str {
-    match space {
-        Space::Room(room) => &plan.rooms[room.0].name,
-        Space::OpenAir => "open air",
     }
 }
 
