@@ -47,21 +47,42 @@ fn rooms(out: &mut String, plan: &Plan) {
     for room in &plan.rooms {
         line!(
             out,
-            "  {:widest$}  {:.2} x {:.2} x {:.2} m, {:.1} m2, {:.1} m3; walls {}, ceiling {}, floor {}",
+            "  {:widest$}  {:.2} x {:.2} x {:.2} m  {:5.1} m2  {:6.1} m3",
             room.name,
             room.width,
             room.length,
             room.height,
             room.floor_area(),
             room.volume(),
-            room.walls.name,
-            room.ceiling.name,
-            room.floor.name
         );
     }
     let floor: f64 = plan.rooms.iter().map(crate::plan::Room::floor_area).sum();
     let volume: f64 = plan.rooms.iter().map(crate::plan::Room::volume).sum();
     line!(out, "  in all {floor:.1} m2, {volume:.0} m3");
+    linings(out, plan);
+}
+
+/// Linings of ceiling, walls and floor, rooms alike taken together.
+fn linings(out: &mut String, plan: &Plan) {
+    let mut groups: Vec<(String, Vec<&str>)> = Vec::new();
+    for room in &plan.rooms {
+        let words = format!(
+            "ceiling {}, walls {}, floor {}",
+            room.ceiling.name, room.walls.name, room.floor.name
+        );
+        match groups.iter_mut().find(|(known, _)| *known == words) {
+            Some((_, names)) => names.push(&room.name),
+            None => groups.push((words, vec![&room.name])),
+        }
+    }
+    for (words, names) in groups {
+        let who = if names.len() == plan.rooms.len() {
+            "all rooms".to_owned()
+        } else {
+            names.join(", ")
+        };
+        line!(out, "  {who}: {words}");
+    }
 }
 
 fn openings(out: &mut String, plan: &Plan) {
@@ -82,7 +103,7 @@ fn openings(out: &mut String, plan: &Plan) {
             format!("shut, gap {:.4} m2", opening.gap_area)
         } else if opening.clear_width < opening.width {
             format!(
-                "{:.2} m clear: {:.2} MW",
+                "{:.2} m clear, {:.2} MW",
                 opening.clear_width,
                 hand::air_limit(factor(opening.clear_width)) / 1e6
             )
@@ -91,14 +112,19 @@ fn openings(out: &mut String, plan: &Plan) {
         };
         line!(
             out,
-            "  {:widest$}  {} to {}, {:.2} x {:.2} m, A sqrt(H) {:.2} m5/2: {:.2} MW when open; at ignition {now}",
+            "  {:widest$}  {:.2} x {:.2} m  A sqrt(H) {:.2} m5/2  {:.2} MW when open; now {now}",
             opening.name,
-            side(plan, opening.from),
-            side(plan, opening.to),
             opening.width,
             height,
             factor(opening.width),
             hand::air_limit(factor(opening.width)) / 1e6,
+        );
+        line!(
+            out,
+            "  {:widest$}  {} to {}",
+            "",
+            side(plan, opening.from),
+            side(plan, opening.to)
         );
     }
     if moved().next().is_none() {
@@ -119,7 +145,7 @@ fn openings(out: &mut String, plan: &Plan) {
         .sum();
     line!(
         out,
-        "  gaps to the open air at ignition: {leak:.3} m2 (orifice area), {:.0} kW by the same hand rule at room height",
+        "  gaps to the open air at ignition: {leak:.3} m2 (orifice area), about {:.0} kW by the same rule",
         plan.rooms
             .first()
             .map_or(0.0, |room| 1500.0 * leak * room.height.sqrt())
@@ -151,7 +177,7 @@ fn contents(out: &mut String, plan: &Plan) {
             _ => {
                 line!(
                     out,
-                    "  {}: {:.1} kg of {} in {}, {:.0} MJ, peak {:.2} MW in the open; fire load {:.0} MJ/m2 of its room",
+                    "  {}: {:.1} kg of {} in {}\n    {:.0} MJ, peak {:.2} MW in the open; fire load {:.0} MJ per m2 of its room",
                     item.name,
                     item.mass,
                     fuel.name,
@@ -201,7 +227,7 @@ fn short_of_air(out: &mut String, plan: &Plan, item: &Item) {
     ) {
         line!(
             out,
-            "    by hand short of air about {early:.0} to {late:.0} s after it is lit (all of that air mixed, 15 to 13 % oxygen; a single room runs short sooner)"
+            "    by hand short of air about {early:.0} to {late:.0} s after it is lit\n    (15 to 13 % oxygen with all of that air mixed; a single room runs short sooner)"
         );
     }
 }
@@ -234,15 +260,15 @@ fn flashover(out: &mut String, plan: &Plan, id: RoomId) {
         .map(|conductance| hand::flashover_mqh(factor, surface, conductance));
     line!(
         out,
-        "    flashover of {} by hand, openings as at ignition: Thomas {:.2} MW, Babrauskas {:.2} MW{} (+/- 30 %, air permitting: {:.2} MW through its openings)",
+        "    flashover of {} by hand, +/- 30 %, openings as at ignition ({:.2} MW of air):\n      Thomas {:.2} MW, Babrauskas {:.2} MW{}",
         room.name,
+        hand::air_limit(factor) / 1e6,
         hand::flashover_thomas(factor, surface) / 1e6,
         hand::flashover_babrauskas(factor) / 1e6,
         mqh.map_or_else(String::new, |mqh| format!(
-            ", McCaffrey-Quintiere-Harkleroad {:.2} MW at {LINING_TIME:.0} s",
+            ", McCaffrey, Quintiere and Harkleroad {:.2} MW at {LINING_TIME:.0} s",
             mqh / 1e6
         )),
-        hand::air_limit(factor) / 1e6
     );
 }
 

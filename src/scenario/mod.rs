@@ -44,7 +44,7 @@ pub fn load(file_name: &str, text: &str, tactic: Option<&str>) -> Result<Plan, R
 /// As [`load`], with the cautions beside the plan.
 ///
 /// # Errors
-/// As [`load`]; the cautions found are among the faults.
+/// As [`load`].
 pub fn load_with_cautions(
     file_name: &str,
     text: &str,
@@ -62,16 +62,20 @@ pub fn load_with_cautions(
     let (plan, found) = resolve::resolve(&sheet, tactic);
     if faults.iter().any(|fault| fault.code == code::SYNTAX) {
         // A broken table makes names unknown and keys missing that are there.
-        faults.extend(found.into_iter().filter(|fault| {
-            ![code::UNKNOWN_NAME, code::MISSING_KEY, code::CAUTION].contains(&fault.code)
-        }));
+        faults.extend(
+            found
+                .into_iter()
+                .filter(|fault| ![code::UNKNOWN_NAME, code::MISSING_KEY].contains(&fault.code)),
+        );
     } else {
         faults.extend(found);
     }
-    let report = Report::new(file_name, text, faults);
-    if report.errors().next().is_some() {
-        return Err(report);
+    if faults.iter().any(|fault| fault.severity == Severity::Error) {
+        // Cautions of a plan with holes in it would mislead.
+        faults.retain(|fault| fault.severity == Severity::Error);
+        return Err(Report::new(file_name, text, faults));
     }
+    let report = Report::new(file_name, text, faults);
     Ok(Loaded {
         plan,
         cautions: report,

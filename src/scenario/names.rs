@@ -17,6 +17,9 @@ pub(super) fn near<'a>(wanted: &str, known: impl IntoIterator<Item = &'a str>) -
         .filter(|(score, _)| *score > 0.8)
         .collect();
     scored.sort_by(|a, b| b.0.total_cmp(&a.0));
+    if let Some((top, _)) = scored.first().copied() {
+        scored.retain(|(score, _)| *score >= top - 0.08);
+    }
     scored.into_iter().take(3).map(|(_, name)| name).collect()
 }
 

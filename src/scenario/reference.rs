@@ -89,8 +89,8 @@ fn kind_words(kind: Kind) -> String {
         format!(
             "{}, {} to {}",
             dimension.words(),
-            units::write(least, dimension),
-            units::write(most, dimension)
+            units::rounded(least, dimension),
+            units::rounded(most, dimension)
         )
     };
     match kind {

@@ -8,4 +8,4 @@ mod table;
 mod text;
 
 pub use table::{Dimension, UNITS, Unit};
-pub use text::{QuantityError, read, write};
+pub use text::{QuantityError, read, rounded, write};

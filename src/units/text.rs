@@ -264,6 +264,31 @@ pub fn write(si: f64, dimension: Dimension) -> String {
         })
 }
 
+/// An SI value as short text for people, rounded to four figures.
+pub fn rounded(si: f64, dimension: Dimension) -> String {
+    let unit = dimension.units().find(|unit| {
+        unit.shown
+            .is_some_and(|(least, most)| si.abs() >= least && si.abs() <= most)
+    });
+    let value = unit.map_or(si, |unit| unit.from_si(si));
+    let places = if value == 0.0 {
+        0
+    } else {
+        // Magnitudes of f64 are far inside i32.
+        #[allow(clippy::cast_possible_truncation)]
+        let magnitude = value.abs().log10().floor() as i32;
+        usize::try_from((3 - magnitude).clamp(0, 12)).unwrap_or(0)
+    };
+    let mut text = format!("{value:.places$}");
+    if text.contains('.') {
+        text = text.trim_end_matches('0').trim_end_matches('.').to_owned();
+    }
+    match unit {
+        Some(unit) => format!("{text} {}", unit.symbol),
+        None => text,
+    }
+}
+
 /// The value in one unit with the fewest digits that read back exactly.
 fn exact(si: f64, unit: &Unit) -> Option<String> {
     let value = unit.from_si(si);
@@ -323,6 +348,17 @@ mod tests {
         close("1 in H2O", Dimension::Pressure, 249.0889);
         close("790 kg/m³", Dimension::Density, 790.0);
         close("2.5e2 kW", Dimension::Power, 250e3);
+    }
+
+    #[test]
+    fn verify_rounded_text_for_people() {
+        assert_eq!(rounded(213.15, Dimension::Temperature), "-60 °C");
+        assert_eq!(rounded(2.4384, Dimension::Length), "2.438 m");
+        assert_eq!(rounded(0.13, Dimension::Length), "13 cm");
+        assert_eq!(rounded(1.0, Dimension::Ratio), "1");
+        assert_eq!(rounded(1e-10, Dimension::Ratio), "0.0000000001");
+        assert_eq!(rounded(86_400.0, Dimension::Time), "24 h");
+        assert_eq!(rounded(0.0, Dimension::Length), "0 mm");
     }
 
     #[test]

@@ -169,7 +169,7 @@ impl Table {
     /// As a user sees its header.
     pub(super) fn header(&self) -> String {
         match self.shape {
-            Shape::Root => "top of the file".to_owned(),
+            Shape::Root => "the top of the file".to_owned(),
             Shape::One => format!("[{}]", self.name),
             Shape::Named(_) => format!("[{}.NAME]", self.name),
             Shape::List(_) => format!("[[{}]]", self.name),

@@ -69,6 +69,7 @@ pub(super) fn sheet(text: &str, faults: &mut Vec<Fault>) -> Sheet {
         faults.append(&mut reader.faults);
     } else {
         let syntax: Vec<Fault> = errors.iter().map(|error| syntax(error, text)).collect();
+        let syntax = once_per_table(syntax, text);
         faults.extend(unshadowed(reader.faults, &syntax, text));
         faults.extend(syntax);
     }
@@ -90,6 +91,31 @@ fn syntax(error: &toml::de::Error, text: &str) -> Fault {
     }
     Fault::error(code::SYNTAX, span, message.to_owned())
         .help("the file is TOML: `key = \"value\"`, text in quotes, tables as [room.hall]")
+}
+
+/// A table given twice makes each of its keys given twice: the table is named
+/// once, its keys are not.
+fn once_per_table(mut faults: Vec<Fault>, text: &str) -> Vec<Fault> {
+    let start = |fault: &Fault| fault.span.as_ref().map_or(0, |span| span.start);
+    let header = |at: usize| {
+        let before = text.get(..at).unwrap_or_default();
+        let line = before.rsplit('\n').next().unwrap_or_default();
+        line.trim_start().starts_with('[')
+    };
+    faults.sort_by_key(start);
+    let mut doubled: Option<usize> = None;
+    faults.retain(|fault| {
+        let at = start(fault);
+        if fault.code != code::SAME_NAME {
+            return true;
+        }
+        if header(at) {
+            doubled = Some(at);
+            return true;
+        }
+        doubled.is_none_or(|from| text.get(from..at).is_some_and(|body| body.contains("\n[")))
+    });
+    faults
 }
 
 /// Faults that are not mere consequences of a syntax error: what stands on a

@@ -71,7 +71,16 @@ impl Reader {
                 Fault::error(
                     code::MISSING_KEY,
                     values.span.clone(),
-                    format!("`{}` is missing in {}", field.name, table.header()),
+                    format!(
+                        "`{}` is missing {} {}",
+                        field.name,
+                        if table.shape == Shape::Root {
+                            "at"
+                        } else {
+                            "in"
+                        },
+                        table.header()
+                    ),
                 )
                 .label(if table.shape == Shape::Root {
                     "at the top of the file"

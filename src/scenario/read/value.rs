@@ -103,7 +103,10 @@ impl Reader {
             }
         };
         if si < least || si > most {
-            let (least, most) = (range_text(least, dimension), range_text(most, dimension));
+            let (least, most) = (
+                units::rounded(least, dimension),
+                units::rounded(most, dimension),
+            );
             self.faults.push(
                 Fault::error(
                     code::OUT_OF_RANGE,
@@ -162,7 +165,7 @@ impl Reader {
         match value.get_ref().as_str() {
             Some(text) if known.contains(&text) => Some(Value::Text(text.to_owned())),
             Some(text) if !looks_like_number(text) => {
-                let or = format!("; or {} like \"{}\"", range.0.words(), range.0.example());
+                let or = format!(" (or {} like \"{}\")", range.0.words(), range.0.example());
                 self.unknown_word(field, value.span(), text, &known, &or);
                 None
             }
@@ -186,7 +189,7 @@ impl Reader {
                     .iter()
                     .map(|row| row.name.as_str())
                     .collect();
-                let or = "; or a growth factor like \"0.0469 kW/s2\"; or a list of times and heat release like [[\"0 s\", \"0 kW\"], [\"60 s\", \"200 kW\"]]";
+                let or = " (or a growth factor like \"0.0469 kW/s2\", or a list of times and heat release like [[\"0 s\", \"0 kW\"], [\"60 s\", \"200 kW\"]])";
                 self.unknown_word(field, value.span(), text, &known, or);
                 None
             }
@@ -202,12 +205,4 @@ impl Reader {
 fn looks_like_number(text: &str) -> bool {
     text.trim_start()
         .starts_with(|first: char| first.is_ascii_digit() || "+-.−".contains(first))
-}
-
-/// A bound as text, in a unit people read.
-fn range_text(si: f64, dimension: Dimension) -> String {
-    match dimension {
-        Dimension::Time if si >= 3600.0 => format!("{} h", si / 3600.0),
-        _ => units::write(si, dimension),
-    }
 }

@@ -6,7 +6,7 @@ use super::super::names;
 use super::super::read::{Located, Opened, Sheet, TacticSheet, Values};
 use super::{Resolver, same_name, unwanted, wanted};
 use crate::plan::{Action, Opening, OpeningId, OpeningKind};
-use crate::units::{Dimension, write};
+use crate::units::{Dimension, rounded};
 use std::ops::Range;
 
 /// An action with its place, for faults of a whole schedule.
@@ -200,7 +200,7 @@ impl Resolver<'_> {
                     values.span("at"),
                     "this action comes after the end of the run",
                 )
-                .label(format!("the run ends at {}", write(end, Dimension::Time)))
+                .label(format!("the run ends at {}", rounded(end, Dimension::Time)))
                 .help("set an earlier time, or make `duration` longer"),
             );
         }
@@ -273,7 +273,7 @@ impl Resolver<'_> {
                         span.clone(),
                         format!("\"{name}\" is still moving from the action before"),
                     )
-                    .label(format!("until {}", write(until, Dimension::Time)))
+                    .label(format!("until {until} s"))
                     .help("begin later, or let the movement before take less time"),
                 );
             } else if action.clear_width == clear {

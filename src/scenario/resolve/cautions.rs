@@ -4,7 +4,7 @@ use super::super::fault::Fault;
 use super::super::read::Sheet;
 use super::Resolver;
 use crate::plan::{Burning, Curve, Item, OpeningKind, Plan, Space};
-use crate::units::{Dimension, write};
+use crate::units::{Dimension, rounded};
 
 /// Length over width above which one room is no longer one box of gas.
 const LONG_ROOM: f64 = 5.0;
@@ -105,7 +105,7 @@ impl Resolver<'_> {
                     0..0,
                     format!(
                         "the building is nearly airtight at ignition ({} to the open air): pressures will be higher than doors and windows bear",
-                        write((outward * 1e6).round() / 1e6, Dimension::Area)
+                        rounded(outward, Dimension::Area)
                     ),
                 )
                 .help("add [leakage.house]; a dwelling of 100 m2 has about 0.03 to 0.1 m2"),

@@ -4,7 +4,7 @@ use super::super::fault::{Fault, code};
 use super::super::read::{Named, Sheet, Value, Values};
 use super::{Resolver, UNREAD, unwanted, wanted};
 use crate::plan::{Burning, Curve, Fuel, FuelId, Item, Room, RoomId};
-use crate::units::{Dimension, write};
+use crate::units::{Dimension, rounded};
 
 impl Resolver<'_> {
     /// Fuels in the order of first use, and the items.
@@ -143,7 +143,7 @@ impl Resolver<'_> {
         if !self.sized(index) {
             return;
         }
-        let text = |value| write(value, Dimension::Length);
+        let text = |value| rounded(value, Dimension::Length);
         if let Some(height) = values.number("surface_height")
             && height >= room.height
         {
@@ -196,7 +196,7 @@ impl Resolver<'_> {
                     values.span("starts"),
                     "it is lit after the end of the run",
                 )
-                .label(format!("the run ends at {}", write(end, Dimension::Time)))
+                .label(format!("the run ends at {}", rounded(end, Dimension::Time)))
                 .help("light it earlier, or make `duration` longer"),
             );
         }

@@ -3,7 +3,7 @@
 use super::super::fault::{Fault, code};
 use super::super::fields::Of;
 use super::super::read::{Located, Sheet, Values};
-use super::{Resolver, UNREAD, wanted};
+use super::{Resolver, UNREAD};
 use crate::catalogue::catalogue;
 use crate::plan::{Course, Fuel, Lining};
 
@@ -128,31 +128,42 @@ impl Resolver<'_> {
         let alone = base.is_none();
         let mut fuel = base.unwrap_or_else(blank);
         name.clone_into(&mut fuel.name);
+        let mut missing = Vec::new();
         let mut whole = true;
+        let mut absent = |key: &'static str| {
+            // A key that could not be read has its fault already.
+            if values.has(key) {
+                whole = false;
+            } else if alone {
+                missing.push(key);
+            }
+        };
         for (key, slot) in FUEL_KEYS {
             match values.number(key) {
                 Some(number) => *slot(&mut fuel) = number,
-                None if alone || values.has(key) => whole &= self.stated(values, key),
-                None => {}
+                None => absent(key),
             }
         }
         match values.two("vapour_heat_capacity") {
             Some(two) => fuel.vapour_heat_capacity = two,
-            None if alone || values.has("vapour_heat_capacity") => {
-                whole &= self.stated(values, "vapour_heat_capacity");
-            }
-            None => {}
+            None => absent("vapour_heat_capacity"),
+        }
+        if !missing.is_empty() {
+            whole = false;
+            self.note(
+                Fault::error(
+                    code::MISSING_KEY,
+                    values.span.clone(),
+                    format!(
+                        "fuel \"{name}\" is like no other and lacks `{}`",
+                        missing.join("`, `")
+                    ),
+                )
+                .label("in this table")
+                .help("state them all, or write `like = \"wood\"` and only what differs"),
+            );
         }
         whole.then_some(fuel)
-    }
-
-    /// Notes a key that is not there at all; one that could not be read has
-    /// its fault already.
-    fn stated(&mut self, values: &Values, key: &str) -> bool {
-        if !values.has(key) {
-            self.note(wanted(values, key, "a fuel without `like` states it"));
-        }
-        false
     }
 
     /// Overrides of yields that an item states, as a fuel of its own.

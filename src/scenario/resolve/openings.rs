@@ -11,8 +11,9 @@ use crate::units::{Dimension, write};
 /// Lengths that differ by less are equal, m.
 const HAIR: f64 = 1e-9;
 
+/// A length for people, rounded down so that it may be written as it stands.
 fn text(length: f64) -> String {
-    write(length, Dimension::Length)
+    write((length * 1000.0 + HAIR).floor() / 1000.0, Dimension::Length)
 }
 
 impl Resolver<'_> {
@@ -100,7 +101,7 @@ impl Resolver<'_> {
         }
         let mut known = self.room_names();
         known.push(OPEN_AIR_NAME);
-        self.unknown(Of::Side, name, &known);
+        self.unknown(Of::Room, name, &known);
         None
     }
 

@@ -4,7 +4,7 @@ use super::super::fault::{Fault, code};
 use super::super::read::Sheet;
 use super::{Resolver, UNREAD};
 use crate::plan::{OpenAir, Room, SharedWall};
-use crate::units::{Dimension, write};
+use crate::units::{Dimension, rounded};
 
 impl Resolver<'_> {
     pub(super) fn rooms(&mut self, open_air: &OpenAir) -> Vec<Room> {
@@ -88,7 +88,7 @@ impl Resolver<'_> {
         }
         let side = room.width.max(room.length);
         let span = wall.values.span("length");
-        let text = |value| write(value, Dimension::Length);
+        let text = |value| rounded(value, Dimension::Length);
         if length > side + 1e-9 {
             self.note(
                 Fault::error(

@@ -5,7 +5,7 @@ use super::super::read::{Named, Sheet};
 use super::{Resolver, UNREAD, wanted};
 use crate::catalogue::catalogue;
 use crate::plan::{Limits, Room, RoomId, Station};
-use crate::units::{Dimension, write};
+use crate::units::{Dimension, rounded};
 
 impl Resolver<'_> {
     pub(super) fn stations(&mut self, rooms: &[Room]) -> Vec<Station> {
@@ -37,7 +37,12 @@ impl Resolver<'_> {
             room: room.unwrap_or(RoomId(0)),
             height: height.unwrap_or(UNREAD),
             posture: posture.map_or_else(
-                || format!("at {}", write(height.unwrap_or(UNREAD), Dimension::Length)),
+                || {
+                    format!(
+                        "at {}",
+                        rounded(height.unwrap_or(UNREAD), Dimension::Length)
+                    )
+                },
                 str::to_owned,
             ),
             limits,
@@ -51,7 +56,7 @@ impl Resolver<'_> {
             } else {
                 "posture"
             };
-            let high = write(room.height, Dimension::Length);
+            let high = rounded(room.height, Dimension::Length);
             self.note(
                 Fault::error(
                     code::DOES_NOT_FIT,
