@@ -60,7 +60,7 @@ fn close(value: f64, expected: f64, relative: f64) {
 }
 
 fn fractions(moles: &[(usize, f64)]) -> Vec<f64> {
-    let mut y = vec![0.0; FIRST_FUEL];
+    let mut y = [0.0; FIRST_FUEL];
     for (species, n) in moles {
         y[*species] = n * MOLAR_MASS[*species];
     }
