@@ -10,7 +10,7 @@ use super::layout::{LOWER, UPPER};
 use super::linear::solve_in_place;
 use super::schedule::Stand;
 use crate::physics::opening_flow::{Bands, GRAVITY, Side, bands};
-use crate::physics::plume::{falling_entrainment, jet_entrainment};
+use crate::physics::plume::buoyant_entrainment;
 use crate::physics::smooth::smoothstep;
 use crate::plan::{Choices, Opening, Space};
 
@@ -443,13 +443,23 @@ impl Passage {
             if flow > 0.0 {
                 stream.lifted = problem.choices.jet_factor
                     * layers[into[LOWER]].available
-                    * jet_entrainment(flow, heat, (interface - moment / flow).max(0.0));
+                    * buoyant_entrainment(
+                        flow,
+                        heat,
+                        (interface - moment / flow).max(0.0),
+                        layers[into[LOWER]].temperature,
+                    );
             }
             let [flow, heat, moment] = falling;
             if flow > 0.0 {
                 stream.dragged = problem.choices.fall_factor
                     * layers[into[UPPER]].available
-                    * falling_entrainment(flow, heat, (moment / flow - interface).max(0.0));
+                    * buoyant_entrainment(
+                        flow,
+                        heat,
+                        (moment / flow - interface).max(0.0),
+                        layers[into[UPPER]].temperature,
+                    );
             }
         }
         self.streams[direction] = stream;

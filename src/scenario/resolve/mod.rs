@@ -1,0 +1,242 @@
+//! Second stage: from the sheet to the plan. Names become indices, words
+//! become numbers, and everything that cannot go together is a fault.
+
+mod actions;
+mod cautions;
+mod items;
+mod materials;
+mod openings;
+mod rooms;
+mod stations;
+
+pub(super) use cautions::{energy, stands_open};
+
+use super::fault::{Fault, code};
+use super::fields::{KNOBS, Knob, Of};
+use super::names;
+use super::read::{Located, Named, Sheet, Values};
+use crate::plan::{Choices, OpenAir, PlacementRule, Plan, PlumeModel, RoomId};
+use std::ops::Range;
+
+/// Value that stands in for one that could not be read; the plan it ends up
+/// in is thrown away, since a fault was noted.
+const UNREAD: f64 = 1.0;
+
+/// The sheet and the faults found so far.
+struct Resolver<'a> {
+    sheet: &'a Sheet,
+    faults: Vec<Fault>,
+}
+
+/// Resolves a sheet; the plan counts only when no error is among the faults.
+pub(super) fn resolve(sheet: &Sheet, tactic: Option<&str>) -> (Plan, Vec<Fault>) {
+    let mut resolver = Resolver {
+        sheet,
+        faults: Vec::new(),
+    };
+    let plan = resolver.plan(tactic);
+    (plan, resolver.faults)
+}
+
+impl<'a> Resolver<'a> {
+    fn plan(&mut self, tactic: Option<&str>) -> Plan {
+        self.same_names();
+        let open_air = OpenAir {
+            temperature: self.sheet.open_air.number("temperature").unwrap_or(UNREAD),
+            humidity: self.sheet.open_air.number("humidity").unwrap_or(UNREAD),
+            pressure: self.sheet.open_air.number("pressure").unwrap_or(UNREAD),
+        };
+        let rooms = self.rooms(&open_air);
+        let shared_walls = self.shared_walls(&rooms);
+        let mut openings = self.openings(&rooms);
+        let (fuels, items) = self.items(&rooms);
+        let stations = self.stations(&rooms);
+        let actions = self.played(&mut openings, tactic);
+        let leaks = self.leakage(&rooms);
+        openings.extend(leaks);
+        self.same_opening_names(&openings);
+        let plan = Plan {
+            title: self.sheet.root.text("title").unwrap_or_default().to_owned(),
+            end: self.sheet.root.number("duration").unwrap_or(UNREAD),
+            open_air,
+            rooms,
+            shared_walls,
+            openings,
+            fuels,
+            items,
+            stations,
+            actions,
+            choices: self.choices(),
+            tactic: tactic.map(str::to_owned),
+        };
+        self.cautions(&plan);
+        plan
+    }
+
+    /// Notes a fault.
+    fn note(&mut self, fault: Fault) {
+        self.faults.push(fault);
+    }
+
+    /// Two things of one kind with one name, whatever case and joins.
+    fn same_names(&mut self) {
+        let sheet = self.sheet;
+        if sheet.rooms.is_empty() {
+            self.note(
+                Fault::elsewhere(code::MISSING_KEY, "there is no room in this scenario")
+                    .help("add one: [room.bedroom] with width, length and height"),
+            );
+        }
+        let kinds: [(&str, &[Named]); 8] = [
+            ("room", &sheet.rooms),
+            ("lining", &sheet.linings),
+            ("shared wall", &sheet.shared_walls),
+            ("opening", &sheet.openings),
+            ("leakage", &sheet.leakages),
+            ("item", &sheet.items),
+            ("fuel", &sheet.fuels),
+            ("station", &sheet.stations),
+        ];
+        for (what, things) in kinds {
+            self.same_among(what, things.iter().map(|thing| &thing.name));
+        }
+        self.same_among(
+            "tactic",
+            sheet.tactics.iter().map(|sheet| &sheet.named.name),
+        );
+        for room in &sheet.rooms {
+            if names::plain(&room.name.value) == names::plain(super::fields::OPEN_AIR_NAME) {
+                self.note(
+                    Fault::error(
+                        code::SAME_NAME,
+                        room.name.span.clone(),
+                        "a room cannot be called \"open air\"; that is the outside",
+                    )
+                    .help("give the room another name"),
+                );
+            }
+        }
+    }
+
+    fn same_among<'n>(&mut self, what: &str, all: impl Iterator<Item = &'n Located<String>>) {
+        let mut seen: Vec<(String, &str)> = Vec::new();
+        for name in all {
+            let plain = names::plain(&name.value);
+            if let Some((_, first)) = seen.iter().find(|(other, _)| *other == plain) {
+                self.note(same_name(what, first, &name.value, name.span.clone()));
+            }
+            seen.push((plain, &name.value));
+        }
+    }
+
+    /// Index of a room by name; a fault when there is none.
+    fn room_id(&mut self, name: &Located<String>) -> Option<RoomId> {
+        let found = self
+            .sheet
+            .rooms
+            .iter()
+            .position(|room| room.name.value == name.value);
+        if found.is_none() {
+            let known = self.room_names();
+            self.unknown(Of::Room, name, &known);
+        }
+        found.map(RoomId)
+    }
+
+    fn room_names(&self) -> Vec<&'a str> {
+        let sheet: &'a Sheet = self.sheet;
+        sheet
+            .rooms
+            .iter()
+            .map(|room| room.name.value.as_str())
+            .collect()
+    }
+
+    fn unknown(&mut self, of: Of, name: &Located<String>, known: &[&str]) {
+        self.faults.push(
+            Fault::error(
+                code::UNKNOWN_NAME,
+                name.span.clone(),
+                format!("there is no {} \"{}\"", of.words(), name.value),
+            )
+            .label("not known")
+            .help(names::suggestion(
+                &name.value,
+                of.words(),
+                known.iter().copied(),
+            )),
+        );
+    }
+
+    fn choices(&mut self) -> Choices {
+        let physics = &self.sheet.physics;
+        let mut choices = Choices::default();
+        match physics.text("plume") {
+            Some("Heskestad") => choices.plume = PlumeModel::Heskestad,
+            Some("Zukoski") => choices.plume = PlumeModel::Zukoski,
+            _ => choices.plume = PlumeModel::McCaffrey,
+        }
+        match physics.text("placement") {
+            Some("image") => choices.placement = PlacementRule::Image,
+            Some("none") => choices.placement = PlacementRule::None,
+            _ => choices.placement = PlacementRule::Weak,
+        }
+        for Knob { field, set, .. } in KNOBS {
+            if let Some(value) = physics.number(field.name) {
+                set(&mut choices, value);
+            }
+        }
+        self.window_of_ignition(&choices);
+        choices
+    }
+
+    fn window_of_ignition(&mut self, choices: &Choices) {
+        if choices.autoignition_full <= choices.autoignition_start {
+            let span = self.sheet.physics.span("autoignition_full");
+            self.note(
+                Fault::error(
+                    code::CONTRADICTION,
+                    span,
+                    "`autoignition_full` must lie above `autoignition_start`",
+                )
+                .help("the defaults are 450 °C and 600 °C"),
+            );
+        }
+    }
+}
+
+/// The fault of two things with one name.
+fn same_name(what: &str, first: &str, second: &str, span: Range<usize>) -> Fault {
+    let message = if first == second {
+        format!("two things are called {what} \"{first}\"")
+    } else {
+        format!("{what} \"{second}\" and {what} \"{first}\" differ only in case, spaces or joins")
+    };
+    Fault::error(code::SAME_NAME, span, message)
+        .label("again here")
+        .help("give one of them another name")
+}
+
+/// A value that must be there for this kind of thing.
+fn wanted(values: &Values, key: &str, because: &str) -> Fault {
+    let field = values.table.field(key);
+    let example = field.map(super::reference::example).unwrap_or_default();
+    let doc = field.map_or("", |field| field.doc);
+    Fault::error(
+        code::MISSING_KEY,
+        values.span.clone(),
+        format!("`{key}` is missing: {because}"),
+    )
+    .label("in this table")
+    .help(format!("{doc} Write it like `{key} = {example}`"))
+}
+
+/// A value that has no meaning for this kind of thing.
+fn unwanted(values: &Values, key: &str, because: &str) -> Fault {
+    Fault::error(
+        code::CONTRADICTION,
+        values.span(key),
+        format!("`{key}` has no meaning here: {because}"),
+    )
+    .help(format!("leave `{key}` out"))
+}
