@@ -1,1 +1,143 @@
-//! What a person at a station meets, reckoned from the record.
+//! What people meet at stations: gas at head height on a reconstructed
+//! profile of finite thickness, and the radiation of the smoke layer above.
+//!
+//! Two-layer values are means over a layer. Nobody stands in a mean, so the
+//! station columns are reconstructed from them and labelled so.
+
+pub mod flux;
+pub mod profile;
+
+use crate::plan::{Plan, Station};
+use crate::record::{Column, Quantity, Record, Subject};
+
+/// Mass-specific extinction of flaming smoke in visible light, m2/kg:
+/// 8.7 m2/g, Mulholland and Croarkin 2000 (from memory), +-13 %.
+pub const SMOKE_EXTINCTION: f64 = 8700.0;
+
+/// Extinction coefficient times distance at which a reflecting object is lost:
+/// 3, Jin 1970 (from memory).
+pub const REFLECTING_FACTOR: f64 = 3.0;
+
+/// Largest visibility that is reported, m. Jin's tests did not go further.
+pub const FARTHEST_VISIBILITY: f64 = 30.0;
+
+/// Distance at which a reflecting object is lost, m, `S = 3 / (8700 rho)` for
+/// soot density `rho` in kg/m3 (0 or more), at most 30 m. Negative densities
+/// count as none; not-a-number stays so.
+pub fn visibility(soot_density: f64) -> f64 {
+    if soot_density.is_nan() {
+        return f64::NAN;
+    }
+    let extinction = SMOKE_EXTINCTION * soot_density;
+    if extinction * FARTHEST_VISIBILITY <= REFLECTING_FACTOR {
+        FARTHEST_VISIBILITY
+    } else {
+        REFLECTING_FACTOR / extinction
+    }
+}
+
+/// Appends the columns of every station of the plan to the record. Columns of
+/// stations that are already there are replaced, so that it may be called
+/// again after a change of heights.
+pub fn observe(record: &mut Record, plan: &Plan) {
+    record
+        .columns
+        .retain(|column| !matches!(column.subject, Subject::Station(_)));
+    let mut found = Vec::new();
+    for (index, station) in plan.stations.iter().enumerate() {
+        let subject = Subject::Station(index);
+        for (quantity, values) in station_columns(record, plan, station) {
+            found.push(Column {
+                subject,
+                quantity,
+                values,
+            });
+        }
+    }
+    record.columns.append(&mut found);
+    record.names.stations = plan.stations.iter().map(|s| s.name.clone()).collect();
+}
+
+/// Histories of one station, in the order of columns.
+fn station_columns(record: &Record, plan: &Plan, station: &Station) -> Vec<(Quantity, Vec<f64>)> {
+    let room = Subject::Room(station.room.0);
+    let share = upper_shares(record, plan, station);
+    let mixed = |lower: Quantity, upper: Quantity| -> Vec<f64> {
+        let lower = record.get(room, lower);
+        let upper = record.get(room, upper);
+        share
+            .iter()
+            .enumerate()
+            .map(|(row, &share)| profile::between(at(lower, row), at(upper, row), share))
+            .collect()
+    };
+    let soot = mixed(Quantity::LowerSoot, Quantity::UpperSoot);
+    vec![
+        (
+            Quantity::StationTemperature,
+            mixed(Quantity::LowerTemperature, Quantity::UpperTemperature),
+        ),
+        (
+            Quantity::StationOxygen,
+            mixed(Quantity::LowerOxygenDry, Quantity::UpperOxygenDry),
+        ),
+        (
+            Quantity::StationCarbonMonoxide,
+            mixed(Quantity::LowerCarbonMonoxide, Quantity::UpperCarbonMonoxide),
+        ),
+        (
+            Quantity::StationCarbonDioxide,
+            mixed(Quantity::LowerCarbonDioxide, Quantity::UpperCarbonDioxide),
+        ),
+        (
+            Quantity::StationVisibility,
+            soot.into_iter().map(visibility).collect(),
+        ),
+        (Quantity::StationFlux, fluxes(record, plan, station)),
+    ]
+}
+
+/// Share of upper-layer gas at the station's head at every output time.
+fn upper_shares(record: &Record, plan: &Plan, station: &Station) -> Vec<f64> {
+    let interface = record.get(Subject::Room(station.room.0), Quantity::Interface);
+    let height = room_height(plan, station);
+    (0..record.time.len())
+        .map(|row| {
+            let interface = at(interface, row);
+            let thickness =
+                profile::fitting_thickness(plan.choices.profile_thickness, interface, height);
+            profile::upper_share(station.height, interface, thickness)
+        })
+        .collect()
+}
+
+/// Radiation of layer and ceiling at the station's head at every output time.
+fn fluxes(record: &Record, plan: &Plan, station: &Station) -> Vec<f64> {
+    let room = Subject::Room(station.room.0);
+    let interface = record.get(room, Quantity::Interface);
+    let upper = record.get(room, Quantity::UpperTemperature);
+    let ceiling = record.get(room, Quantity::CeilingTemperature);
+    let emissivity = record.get(room, Quantity::LayerEmissivity);
+    let Some(plan_room) = plan.rooms.get(station.room.0) else {
+        return vec![f64::NAN; record.time.len()];
+    };
+    (0..record.time.len())
+        .map(|row| {
+            let drop = at(interface, row) - station.height;
+            let share = flux::view_factor_below(plan_room.width, plan_room.length, drop);
+            share * flux::from_layer(at(emissivity, row), at(upper, row), at(ceiling, row))
+        })
+        .collect()
+}
+
+/// Height of the station's room, m; not-a-number when there is no such room.
+fn room_height(plan: &Plan, station: &Station) -> f64 {
+    plan.rooms
+        .get(station.room.0)
+        .map_or(f64::NAN, |room| room.height)
+}
+
+/// Value of a history at a row, not-a-number beyond its end.
+fn at(values: &[f64], row: usize) -> f64 {
+    values.get(row).copied().unwrap_or(f64::NAN)
+}

@@ -60,7 +60,7 @@ pub struct Choices {
     pub clock_exponent: f64,
     /// Cap of the radiation term, default 2.5.
     pub feedback_cap: f64,
-    /// Time for flames to spread over hot fuel again, s, default 30 (15..60).
+    /// Time for flames to spread over hot fuel again, s, default 20 (15..60).
     pub respread_time: f64,
     /// Time for a starved flame to go out, s, default 10 (5..20).
     pub flame_out_time: f64,
@@ -110,7 +110,7 @@ impl Default for Choices {
             flux_exponent: 2.0,
             clock_exponent: 2.0,
             feedback_cap: 2.5,
-            respread_time: 30.0,
+            respread_time: 20.0,
             flame_out_time: 10.0,
             ember_strength: 0.05,
             smallest_flame: 0.005,

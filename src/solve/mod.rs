@@ -1,1 +1,22 @@
-//! The solver: state layout, derivative, pressure balance, events, integration, ledger.
+//! The solver: state layout, derivative, pressure balance, events,
+//! integration, ledger. Knows the plan and the physics, fills the record,
+//! knows no files.
+
+mod building;
+mod burning;
+mod changes;
+mod derivative;
+mod flags;
+mod groups;
+mod heat;
+pub mod integrator;
+mod layers;
+mod layout;
+mod linear;
+mod observe;
+mod pressure;
+mod run;
+mod schedule;
+
+pub use building::{LAYER_GUARD, PlanFault, START_LAYER, WALL_STRIPS};
+pub use run::run;

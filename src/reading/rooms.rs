@@ -1,0 +1,184 @@
+//! What the rooms do: smoke at the door head, hot layers, radiation on the
+//! floor, flashover, pressure.
+
+use super::flashover;
+use super::history::Side;
+use super::moment::{Kind, Moment, Weight};
+use super::reader::Reader;
+use crate::record::{Dimension, Quantity, Subject};
+
+/// 0 °C, K.
+const ZERO_CELSIUS: f64 = 273.15;
+
+/// Layer temperatures that are watched, K: 500 and 600 °C.
+const LAYER_500: f64 = 500.0 + ZERO_CELSIUS;
+const LAYER_600: f64 = 600.0 + ZERO_CELSIUS;
+
+/// Pressure beyond which windows and doors may give way, Pa: 500, by common
+/// practice; doors are hard to open from about 80 Pa on.
+const HIGH_PRESSURE: f64 = 500.0;
+
+/// All moments of the rooms.
+pub(super) fn moments(reader: &Reader<'_>) -> Vec<Moment> {
+    let mut out = Vec::new();
+    for room in 0..reader.plan.rooms.len() {
+        out.extend(smoke_at_door_head(reader, room));
+        out.extend(layer(reader, room, Kind::LayerAt500, LAYER_500));
+        out.extend(layer(reader, room, Kind::LayerAt600, LAYER_600));
+        out.extend(floor_flux(reader, room));
+        out.extend(flashovers(reader, room));
+    }
+    out.extend(high_pressure(reader));
+    out
+}
+
+/// Smoke comes down to the door head for the first time, in rooms with fire
+/// or people.
+fn smoke_at_door_head(reader: &Reader<'_>, room: usize) -> Option<Moment> {
+    let plan = reader.plan;
+    let fire = plan.items.iter().any(|item| item.room.0 == room);
+    let people = plan.stations.iter().any(|station| station.room.0 == room);
+    if !fire && !people {
+        return None;
+    }
+    let (head, opening) = reader.highest_head(room)?;
+    let subject = Subject::Room(room);
+    let level = reader.history(subject, Quantity::Interface);
+    let spell = level.spells(Side::Below, head).into_iter().next()?;
+    let name = reader.room_name(room);
+    let text = format!("smoke in the {name} down to the head of the {opening}");
+    let layer = reader.history(subject, Quantity::UpperTemperature);
+    Some(
+        reader
+            .moment(spell.start, Kind::SmokeAtDoorHead, subject, text)
+            .with("smoke level", head, Dimension::Length)
+            .with("smoke layer", layer.at(spell.start), Dimension::Temperature)
+            .weighing(if fire { Weight::Plain } else { Weight::Detail }),
+    )
+}
+
+/// Layer of a room reaches a temperature.
+fn layer(reader: &Reader<'_>, room: usize, kind: Kind, temperature: f64) -> Vec<Moment> {
+    let subject = Subject::Room(room);
+    let history = reader.history(subject, Quantity::UpperTemperature);
+    let name = reader.room_name(room);
+    reader
+        .by_stage(history, Side::Above, temperature)
+        .into_iter()
+        .map(|spell| {
+            reader
+                .moment(
+                    spell.start,
+                    kind,
+                    subject,
+                    format!("{name}: hot smoke layer"),
+                )
+                .with("smoke layer", temperature, Dimension::Temperature)
+                .with(
+                    "smoke level",
+                    level(reader, room, spell.start),
+                    Dimension::Length,
+                )
+                .with(
+                    "heat burned",
+                    reader.burned().at(spell.start),
+                    Dimension::Power,
+                )
+                .with_spell(spell)
+                .within(reader.band(spell.start))
+        })
+        .collect()
+}
+
+/// Radiation on the floor reaches 20 kW/m2.
+fn floor_flux(reader: &Reader<'_>, room: usize) -> Vec<Moment> {
+    let subject = Subject::Room(room);
+    let history = reader.history(subject, Quantity::FloorFlux);
+    let layer = reader.history(subject, Quantity::UpperTemperature);
+    let name = reader.room_name(room);
+    reader
+        .by_stage(history, Side::Above, flashover::FLOOR_FLUX)
+        .into_iter()
+        .map(|spell| {
+            let text = format!("{name}: enough radiation on the floor to light what lies there");
+            reader
+                .moment(spell.start, Kind::FloorFlux, subject, text)
+                .with(
+                    "radiant flux on the floor",
+                    flashover::FLOOR_FLUX,
+                    Dimension::Flux,
+                )
+                .with("smoke layer", layer.at(spell.start), Dimension::Temperature)
+                .with_spell(spell)
+                .within(reader.band(spell.start))
+        })
+        .collect()
+}
+
+/// Flashover by both criteria, once for each stage.
+fn flashovers(reader: &Reader<'_>, room: usize) -> Vec<Moment> {
+    let subject = Subject::Room(room);
+    let layer = reader.history(subject, Quantity::UpperTemperature);
+    let flux = reader.history(subject, Quantity::FloorFlux);
+    let margin = flashover::margin(reader, room);
+    let both = super::history::History::new(&reader.record.time, &margin);
+    let name = reader.room_name(room);
+    reader
+        .by_stage(both, Side::Above, 1.0)
+        .into_iter()
+        .map(|spell| {
+            let text = format!("{name}: flashover by both criteria");
+            reader
+                .moment(spell.start, Kind::Flashover, subject, text)
+                .with("smoke layer", layer.at(spell.start), Dimension::Temperature)
+                .with(
+                    "radiant flux on the floor",
+                    flux.at(spell.start),
+                    Dimension::Flux,
+                )
+                .with_spell(spell)
+                .within(reader.band(spell.start))
+                .weighing(Weight::Headline)
+        })
+        .collect()
+}
+
+/// Pressure beyond 500 Pa either way, in the room where it is highest.
+fn high_pressure(reader: &Reader<'_>) -> Vec<Moment> {
+    let mut size: Vec<f64> = vec![f64::NAN; reader.record.time.len()];
+    for room in 0..reader.plan.rooms.len() {
+        let pressure = reader.record.get(Subject::Room(room), Quantity::Pressure);
+        for (size, pressure) in size.iter_mut().zip(pressure) {
+            *size = size.max(pressure.abs());
+        }
+    }
+    let history = super::history::History::new(&reader.record.time, &size);
+    reader
+        .by_stage(history, Side::Above, HIGH_PRESSURE)
+        .into_iter()
+        .map(|spell| {
+            let text = "pressure at which windows or doors may give way; none does in the model";
+            let most = history.largest(spell.start, spell.end.unwrap_or(reader.end));
+            reader
+                .moment(
+                    spell.start,
+                    Kind::HighPressure,
+                    Subject::House,
+                    text.to_owned(),
+                )
+                .with(
+                    "highest",
+                    most.map_or(f64::NAN, |(_, value)| value),
+                    Dimension::Pressure,
+                )
+                .with_spell(spell)
+        })
+        .collect()
+}
+
+/// Smoke level of a room at a time, m.
+fn level(reader: &Reader<'_>, room: usize, time: f64) -> f64 {
+    reader
+        .history(Subject::Room(room), Quantity::Interface)
+        .at(time)
+}

@@ -1,0 +1,315 @@
+//! The run in a few numbers.
+
+use serde::Serialize;
+
+use super::fire::SHORT_OF_AIR;
+use super::flashover::{self, Flashover};
+use super::history::{History, Side};
+use super::moment::Kind;
+use super::reader::Reader;
+use super::stations;
+use crate::record::{Closure, Dimension, Ended, Quantity, Subject};
+
+/// A value and when it occurs.
+#[derive(Debug, Clone, Copy, PartialEq, Serialize)]
+pub struct Extreme {
+    /// Value, SI.
+    pub value: f64,
+    /// When, s from ignition.
+    pub time: f64,
+}
+
+/// A stretch of time.
+#[derive(Debug, Clone, Copy, PartialEq, Serialize)]
+pub struct Stretch {
+    /// From, s.
+    pub from: f64,
+    /// To, s; `None` when it lasts to the end of the record.
+    pub to: Option<f64>,
+}
+
+/// A room in a few numbers.
+#[derive(Debug, Clone, PartialEq, Serialize)]
+pub struct RoomSummary {
+    /// Name in the scenario.
+    pub name: String,
+    /// Hottest upper layer, K.
+    pub hottest_layer: Option<Extreme>,
+    /// Lowest smoke level, m above the floor.
+    pub lowest_smoke_level: Option<Extreme>,
+    /// Flashover before the first opening, or over the whole run without one.
+    pub flashover_before: Option<Flashover>,
+    /// Flashover from the first opening on.
+    pub flashover_after: Option<Flashover>,
+}
+
+/// A limit at a station and when it is reached.
+#[derive(Debug, Clone, Copy, PartialEq, Serialize)]
+pub struct LimitSummary {
+    /// Which limit.
+    pub kind: Kind,
+    /// In plain words.
+    pub words: &'static str,
+    /// The limit, SI.
+    pub limit: f64,
+    /// Its dimension.
+    pub dimension: Dimension,
+    /// First time, s; `None` when it is not reached in the model.
+    pub first: Option<f64>,
+    /// First time at or after the first opening, s; the opening's own time
+    /// when it was reached before and still is.
+    pub first_after_opening: Option<f64>,
+}
+
+/// The worst value of a quantity at a station.
+#[derive(Debug, Clone, Copy, PartialEq, Serialize)]
+pub struct Worst {
+    /// What.
+    pub quantity: Quantity,
+    /// Value and time.
+    pub extreme: Extreme,
+}
+
+/// A station in a few numbers.
+#[derive(Debug, Clone, PartialEq, Serialize)]
+pub struct StationSummary {
+    /// Name in the scenario.
+    pub name: String,
+    /// Room.
+    pub room: String,
+    /// Posture in words.
+    pub posture: String,
+    /// Head height, m.
+    pub height: f64,
+    /// Worst values.
+    pub worst: Vec<Worst>,
+    /// Limits.
+    pub limits: Vec<LimitSummary>,
+}
+
+/// The first action that makes an opening wider after ignition.
+#[derive(Debug, Clone, PartialEq, Serialize)]
+pub struct FirstOpening {
+    /// Name of the action.
+    pub action: String,
+    /// Time, s.
+    pub time: f64,
+}
+
+/// Relative closures of the ledger.
+#[derive(Debug, Clone, Copy, PartialEq, Serialize)]
+pub struct Closures {
+    /// Mass, of what went through.
+    pub mass: f64,
+    /// Energy, of the heat released.
+    pub energy: f64,
+    /// Oxygen, of what went through.
+    pub oxygen: f64,
+    /// Carbon, of what went through.
+    pub carbon: f64,
+}
+
+/// The run in a few numbers.
+#[derive(Debug, Clone, PartialEq, Serialize)]
+pub struct Summary {
+    /// Last time of the record, s.
+    pub end: f64,
+    /// How the run ended.
+    pub ended: Ended,
+    /// The first opening on the fire, if any.
+    pub first_opening: Option<FirstOpening>,
+    /// Highest heat burned before the first opening, or over the whole run
+    /// without one, W.
+    pub peak_before: Option<Extreme>,
+    /// Lowest heat burned between that peak and the first opening, W.
+    pub lowest_before: Option<Extreme>,
+    /// Highest heat burned from the first opening on, W.
+    pub peak_after: Option<Extreme>,
+    /// What the incoming air could burn when it burned most after the opening, W.
+    pub air_could_burn_at_peak: Option<f64>,
+    /// Lowest oxygen at the base of the main item's flame, wet volume fraction.
+    pub lowest_base_oxygen: Option<Extreme>,
+    /// When the fire was short of air.
+    pub short_of_air: Vec<Stretch>,
+    /// Highest size of the pressure in any room, Pa.
+    pub highest_pressure: Option<Extreme>,
+    /// Rooms, in the order of the scenario.
+    pub rooms: Vec<RoomSummary>,
+    /// Stations, in the order of the scenario.
+    pub stations: Vec<StationSummary>,
+    /// Closures of the ledger.
+    pub closures: Closures,
+    /// Number of things that a user should know about the run.
+    pub flags: usize,
+}
+
+/// Reads the summary.
+pub(super) fn read(reader: &Reader<'_>) -> Summary {
+    let first_opening = first_opening(reader);
+    let opened = first_opening.as_ref().map(|first| first.time);
+    let before_end = opened.unwrap_or(reader.end);
+    let burned = reader.burned();
+    let peak_before = extreme(burned.largest(0.0, before_end));
+    let peak_after = opened.and_then(|opened| extreme(burned.largest(opened, reader.end)));
+    let air = reader.history(Subject::House, Quantity::AirCouldBurn);
+    let ledger = &reader.record.ledger;
+    let relative = |closure: &Closure| closure.relative;
+    Summary {
+        end: reader.end,
+        ended: reader.record.ended.clone(),
+        peak_before,
+        lowest_before: opened
+            .zip(peak_before)
+            .and_then(|(opened, peak)| extreme(burned.smallest(peak.time, opened))),
+        peak_after,
+        air_could_burn_at_peak: peak_after
+            .map(|peak| air.at(peak.time))
+            .filter(|value| value.is_finite()),
+        lowest_base_oxygen: lowest_base_oxygen(reader),
+        short_of_air: short_of_air(reader),
+        highest_pressure: highest_pressure(reader),
+        rooms: (0..reader.plan.rooms.len())
+            .map(|room| room_summary(reader, room, opened))
+            .collect(),
+        stations: (0..reader.plan.stations.len())
+            .filter_map(|station| station_summary(reader, station, opened))
+            .collect(),
+        closures: Closures {
+            mass: relative(&ledger.mass),
+            energy: relative(&ledger.energy),
+            oxygen: relative(&ledger.oxygen),
+            carbon: relative(&ledger.carbon),
+        },
+        flags: reader.record.flags.len(),
+        first_opening,
+    }
+}
+
+fn extreme(found: Option<(f64, f64)>) -> Option<Extreme> {
+    found.map(|(time, value)| Extreme { value, time })
+}
+
+/// First opening at or after the first ignition.
+fn first_opening(reader: &Reader<'_>) -> Option<FirstOpening> {
+    let lit = reader.plan.items.iter().map(|item| item.ignition);
+    let lit = lit.fold(f64::INFINITY, f64::min);
+    reader
+        .played
+        .iter()
+        .find(|played| played.opens() && played.action.time > lit)
+        .map(|played| FirstOpening {
+            action: played.action.name.clone(),
+            time: played.action.time,
+        })
+}
+
+fn lowest_base_oxygen(reader: &Reader<'_>) -> Option<Extreme> {
+    let item = reader.main_item()?;
+    let base = reader.history(Subject::Item(item), Quantity::BaseOxygen);
+    extreme(base.smallest(0.0, reader.end))
+}
+
+fn short_of_air(reader: &Reader<'_>) -> Vec<Stretch> {
+    reader
+        .burned_over_free()
+        .spells(Side::Below, SHORT_OF_AIR)
+        .into_iter()
+        .map(|spell| Stretch {
+            from: spell.start,
+            to: spell.end,
+        })
+        .collect()
+}
+
+fn highest_pressure(reader: &Reader<'_>) -> Option<Extreme> {
+    (0..reader.plan.rooms.len())
+        .flat_map(|room| {
+            let pressure = reader.history(Subject::Room(room), Quantity::Pressure);
+            [
+                pressure.largest(0.0, reader.end),
+                pressure.smallest(0.0, reader.end),
+            ]
+        })
+        .filter_map(extreme)
+        .max_by(|a, b| a.value.abs().total_cmp(&b.value.abs()))
+}
+
+fn room_summary(reader: &Reader<'_>, room: usize, opened: Option<f64>) -> RoomSummary {
+    let subject = Subject::Room(room);
+    let layer = reader.history(subject, Quantity::UpperTemperature);
+    let level = reader.history(subject, Quantity::Interface);
+    RoomSummary {
+        name: reader
+            .plan
+            .rooms
+            .get(room)
+            .map_or_else(String::new, |r| r.name.clone()),
+        hottest_layer: extreme(layer.largest(0.0, reader.end)),
+        lowest_smoke_level: extreme(level.smallest(0.0, reader.end)),
+        flashover_before: flashover::read(reader, room, 0.0, opened.unwrap_or(reader.end)),
+        flashover_after: opened
+            .and_then(|opened| flashover::read(reader, room, opened, reader.end)),
+    }
+}
+
+fn station_summary(
+    reader: &Reader<'_>,
+    index: usize,
+    opened: Option<f64>,
+) -> Option<StationSummary> {
+    let station = reader.plan.stations.get(index)?;
+    let subject = Subject::Station(index);
+    let worst = [
+        (Quantity::StationTemperature, Side::Above),
+        (Quantity::StationFlux, Side::Above),
+        (Quantity::StationOxygen, Side::Below),
+        (Quantity::StationCarbonMonoxide, Side::Above),
+        (Quantity::StationCarbonDioxide, Side::Above),
+        (Quantity::StationVisibility, Side::Below),
+    ];
+    let worst = worst.into_iter().filter_map(|(quantity, side)| {
+        let history = reader.history(subject, quantity);
+        let found = match side {
+            Side::Above => history.largest(0.0, reader.end),
+            Side::Below => history.smallest(0.0, reader.end),
+        };
+        extreme(found).map(|extreme| Worst { quantity, extreme })
+    });
+    Some(StationSummary {
+        name: station.name.clone(),
+        room: reader
+            .plan
+            .rooms
+            .get(station.room.0)
+            .map_or_else(String::new, |r| r.name.clone()),
+        posture: station.posture.clone(),
+        height: station.height,
+        worst: worst.collect(),
+        limits: stations::limits(station)
+            .into_iter()
+            .map(|limit| limit_summary(reader.history(subject, limit.quantity), limit, opened))
+            .collect(),
+    })
+}
+
+fn limit_summary(
+    history: History<'_>,
+    limit: stations::Limit,
+    opened: Option<f64>,
+) -> LimitSummary {
+    let spells = history.spells(limit.side, limit.value);
+    let after = |opened: f64| {
+        spells
+            .iter()
+            .find(|spell| spell.end.is_none_or(|end| end > opened))
+            .map(|spell| spell.start.max(opened))
+    };
+    LimitSummary {
+        kind: limit.kind,
+        words: limit.words,
+        limit: limit.value,
+        dimension: limit.quantity.dimension(),
+        first: spells.first().map(|spell| spell.start),
+        first_after_opening: opened.and_then(after),
+    }
+}

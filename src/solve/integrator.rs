@@ -1,0 +1,219 @@
+//! The only door to `ode_solvers`: its Dopri5 (Dormand and Prince 1980, order
+//! 5(4)) in scaled variables, with what its traps ask for. Only Dopri5 is
+//! used; its eighth-order sibling is first order on time-dependent systems.
+//!
+//! - Output is read off the continuous model, never its own dense output.
+//! - The stiffness check is off; fast pressures are algebraic in this house.
+//! - A refused evaluation gives slopes so steep that the step is rejected; the
+//!   accepted state is checked for being finite and a fault is latched.
+
+use nalgebra::DVector;
+use ode_solvers::continuous_output_model::ContinuousOutputModel;
+use ode_solvers::dop_shared::OutputType;
+use ode_solvers::{Dopri5, System};
+use std::cell::RefCell;
+
+/// Slope that stands for a refused evaluation, in scaled units per second.
+const REFUSED_SLOPE: f64 = 1e12;
+
+/// Most steps of one stretch.
+const MOST_STEPS: u32 = 200_000;
+
+/// A system of ordinary differential equations in its own units.
+pub trait Equations {
+    /// Rates of change at a time and state; false when the state is refused.
+    fn rates(&mut self, time: f64, y: &[f64], dy: &mut [f64]) -> bool;
+
+    /// Called at every accepted step; true stops the integration there.
+    fn accepted(&mut self, time: f64, y: &[f64]) -> bool;
+}
+
+/// How a stretch is to be integrated.
+#[derive(Debug, Clone, Copy)]
+pub struct Stretch {
+    /// Start, s.
+    pub start: f64,
+    /// End, s, after the start.
+    pub end: f64,
+    /// First step, s.
+    pub first_step: f64,
+    /// Longest step, s.
+    pub longest_step: f64,
+    /// Relative tolerance.
+    pub relative: f64,
+    /// Absolute tolerance in scaled units.
+    pub absolute: f64,
+}
+
+/// How a stretch ended.
+#[derive(Debug, Clone, PartialEq)]
+pub enum Outcome {
+    /// At its end.
+    Reached,
+    /// Where [`Equations::accepted`] stopped it.
+    Stopped,
+    /// It could not go on, and why.
+    Failed(String),
+}
+
+/// A stretch that was integrated.
+pub struct Solution {
+    model: ContinuousOutputModel<f64, DVector<f64>>,
+    scale: Vec<f64>,
+    /// Time reached, s.
+    pub time: f64,
+    /// State there, in its own units.
+    pub state: Vec<f64>,
+    /// How it ended.
+    pub outcome: Outcome,
+    /// Evaluations.
+    pub evaluations: u64,
+    /// Accepted steps.
+    pub steps: u64,
+    /// Rejected steps.
+    pub rejections: u64,
+    /// Mean accepted step, s, as a start for the next stretch.
+    pub last_step: f64,
+}
+
+impl Solution {
+    /// State at a time inside the stretch, off the interpolant of order 4.
+    pub fn at(&self, time: f64) -> Option<Vec<f64>> {
+        if time >= self.time {
+            return (time <= self.time + 1e-9).then(|| self.state.clone());
+        }
+        let scaled = self.model.evaluate(time)?;
+        Some(scaled.iter().zip(&self.scale).map(|(y, s)| y * s).collect())
+    }
+}
+
+struct Inner<'a, E> {
+    equations: &'a mut E,
+    y: Vec<f64>,
+    dy: Vec<f64>,
+    fault: Option<String>,
+    stopped: bool,
+    time: f64,
+    last_step: f64,
+}
+
+struct Adapter<'a, 'b, E> {
+    inner: &'b RefCell<Inner<'a, E>>,
+    scale: &'b [f64],
+}
+
+impl<E: Equations> System<f64, DVector<f64>> for Adapter<'_, '_, E> {
+    fn system(&self, time: f64, scaled: &DVector<f64>, rates: &mut DVector<f64>) {
+        let inner = &mut *self.inner.borrow_mut();
+        let mut finite = true;
+        for ((y, x), s) in inner.y.iter_mut().zip(scaled.iter()).zip(self.scale) {
+            *y = x * s;
+            finite &= y.is_finite();
+        }
+        let taken = finite && inner.equations.rates(time, &inner.y, &mut inner.dy);
+        if !taken || inner.dy.iter().any(|r| !r.is_finite()) {
+            rates.fill(REFUSED_SLOPE);
+            return;
+        }
+        for ((r, dy), s) in rates.iter_mut().zip(&inner.dy).zip(self.scale) {
+            *r = dy / s;
+        }
+    }
+
+    fn solout(&mut self, time: f64, scaled: &DVector<f64>, _rates: &DVector<f64>) -> bool {
+        let inner = &mut *self.inner.borrow_mut();
+        for ((y, x), s) in inner.y.iter_mut().zip(scaled.iter()).zip(self.scale) {
+            *y = x * s;
+        }
+        inner.last_step = time - inner.time;
+        inner.time = time;
+        if inner.y.iter().any(|y| !y.is_finite()) {
+            inner.fault = Some("a quantity is no longer a number".into());
+            return true;
+        }
+        inner.stopped = inner.equations.accepted(time, &inner.y);
+        inner.stopped
+    }
+}
+
+/// Integrates one stretch from a state in its own units.
+pub fn integrate<E: Equations>(
+    equations: &mut E,
+    scale: &[f64],
+    stretch: &Stretch,
+    state: &[f64],
+) -> Solution {
+    let inner = RefCell::new(Inner {
+        equations,
+        y: state.to_vec(),
+        dy: vec![0.0; state.len()],
+        fault: None,
+        stopped: false,
+        time: stretch.start,
+        last_step: stretch.first_step,
+    });
+    let scaled = DVector::from_iterator(state.len(), state.iter().zip(scale).map(|(y, s)| y / s));
+    let length = stretch.end - stretch.start;
+    let mut model = ContinuousOutputModel::default();
+    let mut stepper = Dopri5::from_param(
+        Adapter {
+            inner: &inner,
+            scale,
+        },
+        stretch.start,
+        stretch.end,
+        length,
+        scaled,
+        stretch.relative,
+        stretch.absolute,
+        0.9,
+        0.04,
+        0.2,
+        10.0,
+        stretch.longest_step.min(length),
+        stretch.first_step.min(length),
+        MOST_STEPS,
+        u32::MAX,
+        OutputType::Continuous,
+    );
+    let result = stepper.integrate_with_continuous_output_model(&mut model);
+    let last = stepper.y_out().last().cloned();
+    let steps = stepper.x_out().len() as u64;
+    drop(stepper);
+    let inner = inner.into_inner();
+    let outcome = match (&result, inner.fault, inner.stopped) {
+        (_, Some(fault), _) => Outcome::Failed(fault),
+        (Err(error), None, _) => Outcome::Failed(explain(error)),
+        (Ok(_), None, true) => Outcome::Stopped,
+        (Ok(_), None, false) => Outcome::Reached,
+    };
+    let state = last.map_or_else(
+        || state.to_vec(),
+        |scaled| scaled.iter().zip(scale).map(|(x, s)| x * s).collect(),
+    );
+    let stats = result.ok();
+    Solution {
+        model,
+        scale: scale.to_vec(),
+        time: if outcome == Outcome::Reached {
+            stretch.end
+        } else {
+            inner.time
+        },
+        state,
+        outcome,
+        evaluations: stats.map_or(0, |s| u64::from(s.num_eval)),
+        steps,
+        rejections: stats.map_or(0, |s| u64::from(s.rejected_steps)),
+        last_step: inner.last_step,
+    }
+}
+
+fn explain(error: &ode_solvers::dop_shared::IntegrationError) -> String {
+    use ode_solvers::dop_shared::IntegrationError as E;
+    match error {
+        E::MaxNumStepReached { .. } => "more steps were needed than are allowed".into(),
+        E::StepSizeUnderflow { .. } => "no step was small enough".into(),
+        E::StiffnessDetected { .. } => "the equations became stiff".into(),
+    }
+}
