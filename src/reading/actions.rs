@@ -53,8 +53,8 @@ fn words(reader: &Reader<'_>, played: &Played<'_>) -> String {
         other => format!("held at {other}"),
     };
     match &action.because {
-        Some(because) => format!("{name} {what}: {because}"),
-        None => format!("{name} {what}"),
+        Some(because) => format!("{}: {name} {what}; {because}", spoken(&action.name)),
+        None => format!("{}: {name} {what}", spoken(&action.name)),
     }
 }
 

@@ -75,7 +75,7 @@ fn front(reader: &Reader<'_>, item: usize, number: usize, played: &Played<'_>) -
             .at(opened);
         let height = plan.rooms.get(room)?.height;
         let speed = front_speed(plan.open_air.temperature, gas, height);
-        if !(speed > 0.0) {
+        if speed == 0.0 {
             return None;
         }
         let entry = if step == 0 {

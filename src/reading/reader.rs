@@ -247,8 +247,7 @@ impl Moment {
     /// Adds until when a spell lasts, and how often it comes back.
     pub(super) fn with_spell(mut self, spell: Spell) -> Self {
         if spell.times > 1 {
-            self.text
-                .push_str(&format!(", back and forth {} times", spell.times));
+            self.text = format!("{}, back and forth {} times", self.text, spell.times);
         }
         match spell.end {
             Some(end) => self.with("until", end, Dimension::Time),

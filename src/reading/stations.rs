@@ -77,7 +77,11 @@ pub(super) fn moments(reader: &Reader<'_>) -> Vec<Moment> {
 /// Station in words: name, room, posture.
 fn place(reader: &Reader<'_>, station: &Station) -> String {
     let room = reader.room_name(station.room.0);
-    format!("{} ({room}, {})", spoken(&station.name), station.posture)
+    format!(
+        "station {} ({room}, {})",
+        spoken(&station.name),
+        station.posture
+    )
 }
 
 fn reached(reader: &Reader<'_>, index: usize, station: &Station, limit: Limit) -> Vec<Moment> {

@@ -4,8 +4,8 @@ use serde::Serialize;
 
 use super::fire::SHORT_OF_AIR;
 use super::flashover::{self, Flashover};
-use super::history::{History, Side};
-use super::moment::Kind;
+use super::history::Side;
+use super::moment::{Band, Kind};
 use super::reader::Reader;
 use super::stations;
 use crate::record::{Closure, Dimension, Ended, Quantity, Subject};
@@ -59,6 +59,8 @@ pub struct LimitSummary {
     /// First time at or after the first opening, s; the opening's own time
     /// when it was reached before and still is.
     pub first_after_opening: Option<f64>,
+    /// Earliest and latest to expect of that, unless it was so at the opening.
+    pub band: Option<Band>,
 }
 
 /// The worst value of a quantity at a station.
@@ -287,16 +289,18 @@ fn station_summary(
         worst: worst.collect(),
         limits: stations::limits(station)
             .into_iter()
-            .map(|limit| limit_summary(reader.history(subject, limit.quantity), limit, opened))
+            .map(|limit| limit_summary(reader, subject, limit, opened))
             .collect(),
     })
 }
 
 fn limit_summary(
-    history: History<'_>,
+    reader: &Reader<'_>,
+    subject: Subject,
     limit: stations::Limit,
     opened: Option<f64>,
 ) -> LimitSummary {
+    let history = reader.history(subject, limit.quantity);
     let spells = history.spells(limit.side, limit.value);
     let after = |opened: f64| {
         spells
@@ -304,12 +308,14 @@ fn limit_summary(
             .find(|spell| spell.end.is_none_or(|end| end > opened))
             .map(|spell| spell.start.max(opened))
     };
+    let first_after_opening = opened.and_then(after);
     LimitSummary {
         kind: limit.kind,
         words: limit.words,
         limit: limit.value,
         dimension: limit.quantity.dimension(),
         first: spells.first().map(|spell| spell.start),
-        first_after_opening: opened.and_then(after),
+        first_after_opening,
+        band: first_after_opening.and_then(|time| reader.band(time)),
     }
 }
