@@ -6,7 +6,7 @@
 mod support;
 
 use doorglow::exposure::observe;
-use doorglow::reading::{Answer, Kind, Moment, moments, summary};
+use doorglow::reading::{Answer, Comeback, Kind, Moment, moments, summary};
 use doorglow::record::{Dimension, Ended, Quantity, Record, Subject};
 use doorglow::show::text::{Style, report};
 use doorglow::show::{RunReading, timeline_csv};
@@ -95,7 +95,7 @@ fn verify_cold_air_comes_at_the_earliest_before_it_is_felt() {
     let felt = of(&read, Kind::AirFelt);
     assert_eq!((earliest.len(), felt.len()), (1, 1));
     // Hall 6 m at 93 °C, half of 4 m at 95 °C, outside 10 °C, height 2.4 m.
-    let speed = |celsius: f64| 0.35 * (((celsius + 273.15) / 283.15 - 1.0) * 9.806_65 * 2.4).sqrt();
+    let speed = |celsius: f64| 0.35 * (((celsius + 273.15) / 283.15 - 1.0) * 9.81 * 2.4).sqrt();
     let expected = 480.0 + 6.0 / speed(93.0) + 2.0 / speed(95.0);
     assert!((earliest[0].time - expected).abs() < 1e-6);
     assert!((felt[0].time - (488.0 + 32.0 * 0.01 / 0.041)).abs() < 0.1);
@@ -129,6 +129,34 @@ fn verify_summary_has_peaks_on_both_sides_of_the_opening() {
     assert_eq!(summary.peak_after.unwrap().time, 604.0);
     assert_eq!(summary.lowest_before.unwrap().value, 54e3);
     assert_eq!(summary.short_of_air.len(), 1);
+}
+
+#[test]
+fn verify_a_fire_that_stays_starved_does_not_come_back() {
+    let (plan, mut record) = support::starved_and_back();
+    for column in &mut record.columns {
+        if column.quantity == Quantity::Burned {
+            for (value, time) in column.values.iter_mut().zip(&record.time) {
+                *value = value.min(if *time > 480.0 { 54e3 } else { f64::INFINITY });
+            }
+        }
+    }
+    let summary = summary(&record, &plan);
+    assert_eq!(summary.comeback, Some(Comeback::NotInTheModel));
+    assert!(of(&moments(&record, &plan), Kind::BackUp).is_empty());
+}
+
+#[test]
+fn verify_air_that_comes_after_burning_out_is_no_moment() {
+    let (mut plan, record) = support::starved_and_back();
+    let mut late = plan.actions[0].clone();
+    late.name = "late".into();
+    late.time = 870.0;
+    late.clear_width = 0.95;
+    plan.actions.push(late);
+    let read = moments(&record, &plan);
+    assert_eq!(of(&read, Kind::AirEarliest).len(), 1);
+    assert_eq!(of(&read, Kind::Action).len(), 2);
 }
 
 #[test]

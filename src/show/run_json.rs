@@ -2,6 +2,7 @@
 
 use serde::Serialize;
 
+use super::PROGRAM_VERSION;
 use super::text::CAUTIONS;
 use crate::plan::Plan;
 use crate::reading::{BAND_SOURCE, Moment, Summary};
@@ -51,7 +52,7 @@ impl<'a> RunReading<'a> {
     ) -> Self {
         Self {
             schema_version: RUN_SCHEMA_VERSION,
-            program_version: env!("CARGO_PKG_VERSION"),
+            program_version: PROGRAM_VERSION,
             cautions: CAUTIONS,
             title: &plan.title,
             tactic: plan.tactic.as_deref(),

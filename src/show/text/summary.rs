@@ -1,9 +1,10 @@
 //! The summary in words.
 
 use super::lines::{Page, glued};
-use super::values::{clock, since};
+use super::values::{clock, metric, since};
 use crate::reading::{
-    Answer, Extreme, Flashover, LimitSummary, RoomSummary, StationSummary, Summary, spoken,
+    Answer, Band, Comeback, Extreme, Flashover, LimitSummary, RoomSummary, StationSummary, Summary,
+    spoken,
 };
 use crate::record::{Dimension, Ended};
 
@@ -16,10 +17,19 @@ fn value(value: f64, dimension: Dimension) -> String {
 pub(super) fn write(page: &mut Page, summary: &Summary) {
     page.heading("SUMMARY");
     fire(page, summary);
-    for room in &summary.rooms {
+    for room in summary.rooms.iter().filter(|room| room.hot_layer) {
         if let Some(text) = room_words(summary, room) {
             page.entry(&spoken(&room.name), &text);
         }
+    }
+    let without: Vec<String> = summary
+        .rooms
+        .iter()
+        .filter(|room| !room.hot_layer)
+        .map(|room| spoken(&room.name))
+        .collect();
+    if !without.is_empty() {
+        page.entry("no hot layer in", &without.join(", "));
     }
     for station in &summary.stations {
         station_words(page, summary, station);
@@ -77,6 +87,9 @@ fn fire(page: &mut Page, summary: &Summary) {
         }
         page.entry("", &text);
     }
+    if let Some(comeback) = summary.comeback {
+        page.entry("", &comeback_words(summary, comeback));
+    }
     let stretches: Vec<String> = summary
         .short_of_air
         .iter()
@@ -100,6 +113,32 @@ fn fire(page: &mut Page, summary: &Summary) {
     }
 }
 
+/// Whether and when the fire comes back.
+fn comeback_words(summary: &Summary, comeback: Comeback) -> String {
+    let Comeback::At { time, band } = comeback else {
+        return "does not come back within the run, in the model".to_owned();
+    };
+    let opened = summary
+        .first_opening
+        .as_ref()
+        .map_or(0.0, |first| first.time);
+    let text = format!(
+        "back above three times its starved level at {}",
+        since(time - opened)
+    );
+    match band {
+        Some(band) => format!("{text} ({})", band_words(band, opened)),
+        None => text,
+    }
+}
+
+/// A band on the clock of the opening.
+fn band_words(band: Band, opened: f64) -> String {
+    let earliest = since(band.earliest - opened);
+    let latest = since(band.latest - opened);
+    glued(&format!("band {earliest} to {latest}"))
+}
+
 fn room_words(summary: &Summary, room: &RoomSummary) -> Option<String> {
     let mut parts = Vec::new();
     if let Some(hottest) = room.hottest_layer {
@@ -110,43 +149,51 @@ fn room_words(summary: &Summary, room: &RoomSummary) -> Option<String> {
         let text = at_since(summary, lowest, Dimension::Length);
         parts.push(format!("smoke down to {text}"));
     }
-    let readings = [
-        (
-            room.flashover_before,
-            summary
-                .first_opening
-                .is_some()
-                .then_some("before the opening"),
-        ),
-        (room.flashover_after, Some("after it")),
-    ];
-    let worth = |reading: &Flashover| reading.word != Answer::No;
-    let told = readings
-        .iter()
-        .any(|(reading, _)| reading.as_ref().is_some_and(worth));
-    let answers: Vec<String> = readings
-        .iter()
-        .filter_map(|(reading, when)| Some(flashover(reading.as_ref()?, *when)))
-        .collect();
-    if told {
-        parts.push(format!("flashover: {}", answers.join("; ")));
-    } else if !answers.is_empty() {
-        parts.push("flashover: no".to_owned());
-    }
+    parts.extend(flashover_words(summary, room));
     (!parts.is_empty()).then(|| parts.join("; "))
 }
 
-/// One reading of flashover, with what each criterion says.
-fn flashover(reading: &Flashover, when: Option<&str>) -> String {
-    let when = when.map_or_else(String::new, |when| format!("{when} "));
-    format!(
-        "{when}{}: {} by the layer, {}, and {} by the radiation on the floor, {}",
-        reading.word.word(),
-        reading.by_layer.word(),
-        value(reading.hottest_layer, Dimension::Temperature),
-        reading.by_floor_flux.word(),
-        value(reading.highest_flux, Dimension::Flux),
-    )
+/// Flashover before and after the first opening, with what each criterion
+/// says where it is not a plain no.
+fn flashover_words(summary: &Summary, room: &RoomSummary) -> Option<String> {
+    let before = if summary.first_opening.is_some() {
+        " before the opening"
+    } else {
+        ""
+    };
+    let readings: Vec<(&Flashover, &str)> = room
+        .flashover_before
+        .iter()
+        .map(|reading| (reading, before))
+        .chain(
+            room.flashover_after
+                .iter()
+                .map(|reading| (reading, " after the opening")),
+        )
+        .collect();
+    if readings.is_empty() {
+        return None;
+    }
+    if readings
+        .iter()
+        .all(|(reading, _)| reading.word == Answer::No)
+    {
+        return Some("flashover: no".to_owned());
+    }
+    let words: Vec<String> = readings
+        .into_iter()
+        .map(|(reading, when)| {
+            format!(
+                "flashover{when}: {} (layer {}: {}, floor {}: {})",
+                reading.word.word(),
+                glued(&metric(reading.hottest_layer, Dimension::Temperature)),
+                reading.by_layer.word(),
+                glued(&metric(reading.highest_flux, Dimension::Flux)),
+                reading.by_floor_flux.word(),
+            )
+        })
+        .collect();
+    Some(words.join("; "))
 }
 
 fn station_words(page: &mut Page, summary: &Summary, station: &StationSummary) {

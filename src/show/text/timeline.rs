@@ -21,11 +21,15 @@ pub(super) fn write(page: &mut Page, moments: &[Moment], details: bool) {
     page.paragraph("Minutes from ignition; in the second column, from the last action.");
     page.gap();
     let hidden = |moment: &Moment| moment.weight == Weight::Detail && !details;
-    for (number, moment) in moments.iter().filter(|moment| !hidden(moment)).enumerate() {
-        if moment.kind == Kind::Action && number > 0 {
+    let mut before: Option<&Moment> = None;
+    for moment in moments.iter().filter(|moment| !hidden(moment)) {
+        let opens_stage =
+            moment.kind == Kind::Action && before.is_some_and(|before| before.time < moment.time);
+        if opens_stage {
             page.gap();
         }
         row(page, moment);
+        before = Some(moment);
     }
     if moments.iter().any(|moment| moment.band.is_some()) {
         page.gap();
