@@ -162,12 +162,12 @@ impl Enclosure {
 
     /// Irradiation, reflections included, that comes of a flux falling on the
     /// surfaces first, W/m2.
-    pub fn from_incident(&self, incident: &Vector4<f64>) -> Vector4<f64> {
+    pub fn of_incident(&self, incident: &Vector4<f64>) -> Vector4<f64> {
         self.inverse * incident
     }
 
     /// Irradiation that comes of an extra emission of the surfaces, W/m2.
-    pub fn from_emission(&self, extra: &Vector4<f64>) -> Vector4<f64> {
+    pub fn of_emission(&self, extra: &Vector4<f64>) -> Vector4<f64> {
         self.inverse * (self.exchange * extra)
     }
 }

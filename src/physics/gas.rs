@@ -292,6 +292,8 @@ pub fn moist_air(water: f64, species: usize) -> Vec<f64> {
         *mass *= molar;
     }
     let total: f64 = masses.iter().sum();
-    masses.iter_mut().for_each(|m| *m /= total);
+    for mass in &mut masses {
+        *mass /= total;
+    }
     masses
 }

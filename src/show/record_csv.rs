@@ -30,7 +30,12 @@ pub fn record_csv(record: &Record, plan: &Plan) -> Result<Vec<u8>, csv::Error> {
 
 fn headings(record: &Record, plan: &Plan) -> Vec<String> {
     let mut headings = vec!["time [s]".to_owned()];
-    headings.extend(record.columns.iter().map(|column| heading(record, plan, column)));
+    headings.extend(
+        record
+            .columns
+            .iter()
+            .map(|column| heading(record, plan, column)),
+    );
     headings
 }
 

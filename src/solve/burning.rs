@@ -37,8 +37,7 @@ pub struct ItemRates {
     pub given_off: f64,
     /// Heat released at the item, W.
     pub burned: f64,
-    /// Heat in flame that it offers (for flame height), W.
-    pub flame: f64,
+
     /// Flame height, m.
     pub flame_height: f64,
     /// Share of base air from the lower layer.
@@ -270,7 +269,7 @@ fn release(
     ItemRates {
         free,
         given_off,
-        flame: flaming,
+
         flame_height: flame_height(flaming, scene.diameter(flaming)).max(0.0),
         rates: [flaming, glowing, 0.0, 0.0, 0.0],
         ..ItemRates::default()

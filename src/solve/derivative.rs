@@ -286,11 +286,11 @@ impl<'a> Model<'a> {
             return 0.0;
         }
         let power = wanted * fuel / (fuel + JET_FUEL) * oxygen / (oxygen + JET_OXYGEN);
-        for f in 0..reactions.len() {
+        for (f, reaction) in reactions.iter().enumerate() {
             burn(
                 &mut self.changes,
                 upper,
-                &reactions[f],
+                reaction,
                 f,
                 power * heat_of(f) / heat,
             );
@@ -322,11 +322,9 @@ impl<'a> Model<'a> {
                 let stream = &passage.streams[direction];
                 let source = passage.source(direction);
                 let into = passage.destination(direction);
-                for k in 0..2 {
-                    for d in 0..2 {
-                        let flow = stream.flow[k][d];
-                        self.changes
-                            .transfer(&self.layers, source[k], into[d], flow);
+                for (from, flows) in source.into_iter().zip(stream.flow) {
+                    for (into, flow) in into.into_iter().zip(flows) {
+                        self.changes.transfer(&self.layers, from, into, flow);
                     }
                 }
                 let [l, u] = into;
@@ -369,25 +367,25 @@ impl<'a> Model<'a> {
         let Some(room) = passage.rooms()[direction] else {
             return (0.0, 0.0);
         };
-        for k in 0..2 {
-            let flow = stream.from_layer(k);
+        for (k, from) in source.into_iter().enumerate() {
+            let flow = stream.of_layer(k);
             if flow <= 0.0 {
                 continue;
             }
-            let gas = &self.layers.layers[source[k]];
+            let gas = &self.layers.layers[from];
             let own = burning::own_ignition(&self.plan.choices, gas.temperature);
             let pilot = if k == UPPER { self.pilot[room] } else { 0.0 };
             let lit = 1.0 - (1.0 - own) * (1.0 - pilot);
             if lit <= 0.0 {
                 continue;
             }
-            let fractions = self.layers.fractions(source[k]);
+            let fractions = self.layers.fractions(from);
             for (f, reaction) in self.building.reactions.iter().enumerate() {
                 let rate = flow * fractions[FIRST_FUEL + f].max(0.0);
                 fuel += lit * rate * reaction.heat;
                 need += lit * rate * reaction.oxygen;
             }
-            oxygen += self.flame_factor(source[k]) * flow * fractions[O2].max(0.0);
+            oxygen += self.flame_factor(from) * flow * fractions[O2].max(0.0);
         }
         if need <= 0.0 {
             return (0.0, 0.0);

@@ -198,22 +198,19 @@ fn even_out(
         if before[room] >= after[room] {
             continue;
         }
-        let gain: Vec<f64> = match group_of(room) {
-            Some(group) => {
-                let want = |r: usize| building.rooms[r].volume * (after[r] - before[r]).max(0.0);
-                let whole: f64 = groups[group].rooms.iter().map(|r| want(*r)).sum();
-                pools[group]
-                    .iter()
-                    .map(|m| m * want(room) / whole)
-                    .collect()
-            }
-            None => {
-                let ratio = (building.pressure + before[room]) / (building.pressure + after[room]);
-                let mass = building.air_density
-                    * building.rooms[room].volume
-                    * (1.0 - ratio.powf(1.0 / GAMMA));
-                building.air.iter().map(|f| f * mass).collect()
-            }
+        let gain: Vec<f64> = if let Some(group) = group_of(room) {
+            let want = |r: usize| building.rooms[r].volume * (after[r] - before[r]).max(0.0);
+            let whole: f64 = groups[group].rooms.iter().map(|r| want(*r)).sum();
+            pools[group]
+                .iter()
+                .map(|m| m * want(room) / whole)
+                .collect()
+        } else {
+            let ratio = (building.pressure + before[room]) / (building.pressure + after[room]);
+            let mass = building.air_density
+                * building.rooms[room].volume
+                * (1.0 - ratio.powf(1.0 / GAMMA));
+            building.air.iter().map(|f| f * mass).collect()
         };
         let upper = y[building.layout.upper_volume(room)] / building.rooms[room].volume;
         for (layer, share) in [(LOWER, 1.0 - upper), (UPPER, upper)] {

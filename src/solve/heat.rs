@@ -242,7 +242,7 @@ impl Scene<'_> {
             let clear = [clear_up, clear_up, clear_down, clear_down];
             let incident =
                 Vector4::from_fn(|i, _| rate.radiated * shares[i] * clear[i] / this.shape.area[i]);
-            this.whole += this.enclosure.from_incident(&incident);
+            this.whole += this.enclosure.of_incident(&incident);
             this.flames += rate.radiated;
         }
     }
@@ -281,7 +281,7 @@ impl Scene<'_> {
         }
         if any {
             for (room, extra) in radiation.iter_mut().zip(extra.iter()) {
-                room.whole += room.enclosure.from_emission(extra);
+                room.whole += room.enclosure.of_emission(extra);
             }
         }
     }

@@ -33,6 +33,7 @@ pub struct Layer {
 
 /// All layers of a state with their mass fractions and species enthalpies.
 #[derive(Debug, Clone)]
+#[allow(clippy::struct_field_names)] // "layers" is the trade's word for what it holds.
 pub struct Layers {
     /// Layers, the outside air last.
     pub layers: Vec<Layer>,

@@ -58,10 +58,7 @@ const ACCOUNTS: usize = 9;
 /// Layout of the state vector.
 #[derive(Debug, Clone)]
 pub struct Layout {
-    /// Number of rooms.
-    pub rooms: usize,
-    /// Number of species.
-    pub species: usize,
+    species: usize,
     items_at: usize,
     slabs: Vec<Range<usize>>,
     pressures_at: usize,
@@ -82,7 +79,6 @@ impl Layout {
         let pressures_at = at;
         let ledger_at = pressures_at + rooms;
         Self {
-            rooms,
             species,
             items_at,
             slabs,
@@ -95,11 +91,6 @@ impl Layout {
     /// Length of the state.
     pub fn len(&self) -> usize {
         self.len
-    }
-
-    /// Never empty: the ledger is always there.
-    pub fn is_empty(&self) -> bool {
-        self.len == 0
     }
 
     fn room(&self, room: usize) -> usize {

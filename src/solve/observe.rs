@@ -190,7 +190,7 @@ impl Observer {
 }
 
 fn mean(stream: &super::pressure::Stream, value: impl Fn(usize) -> f64) -> f64 {
-    let flows = [stream.from_layer(0), stream.from_layer(1)];
+    let flows = [stream.of_layer(0), stream.of_layer(1)];
     let total = flows[0] + flows[1];
     if total > STILL {
         (flows[0] * value(0) + flows[1] * value(1)) / total

@@ -47,8 +47,8 @@ impl Stream {
         self.flow.iter().flatten().sum()
     }
 
-    /// Flow from one layer of the source, kg/s.
-    pub fn from_layer(&self, layer: usize) -> f64 {
+    /// Flow that one layer of the source gives, kg/s.
+    pub fn of_layer(&self, layer: usize) -> f64 {
         self.flow[layer][LOWER] + self.flow[layer][UPPER]
     }
 }
@@ -116,13 +116,11 @@ impl Passage {
             let (low, up) = (&layers.layers[into[LOWER]], &layers.layers[into[UPPER]]);
             let reference =
                 low.available * low.temperature + (1.0 - low.available) * up.temperature;
-            for k in 0..2 {
-                let gas = &layers.layers[source[k]];
+            for (k, &from) in source.iter().enumerate() {
+                let gas = &layers.layers[from];
                 self.deposit[direction][k] =
                     smoothstep((gas.temperature - reference) / DEPOSIT_STEP);
-                for d in 0..2 {
-                    self.growth[direction][k][d] = layers.growth(source[k], into[d]);
-                }
+                self.growth[direction][k] = into.map(|into| layers.growth(from, into));
             }
         }
     }
@@ -479,7 +477,7 @@ impl Passage {
             let stream = &self.streams[direction];
             let (from, to) = (self.rooms[direction], self.rooms[1 - direction]);
             for k in 0..2 {
-                let out = stream.from_layer(k) / layers.layers[self.source(direction)[k]].density;
+                let out = stream.of_layer(k) / layers.layers[self.source(direction)[k]].density;
                 if let Some(room) = from {
                     residual[room] -= out;
                     scale[room] += out;

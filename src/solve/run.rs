@@ -221,10 +221,10 @@ fn stretches(
         first_step = RESTART_STEP;
         match &solution.outcome {
             Outcome::Reached => {
-                if !landings[next].restart {
-                    first_step = solution.last_step;
-                } else {
+                if landings[next].restart {
                     forced.fill(false);
+                } else {
+                    first_step = solution.last_step;
                 }
                 next += 1;
             }
