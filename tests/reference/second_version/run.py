@@ -1,4 +1,7 @@
-"""Runs the second version on case.json and writes result.csv: python3 run.py [method]."""
+"""Runs the second version on a case and writes its result: python3 run.py [case [method [file]]].
+
+Without arguments: case.json by LSODA to result.csv. With `hot`: hot.json to hot.csv.
+"""
 
 import csv
 import json
@@ -35,9 +38,10 @@ def pieces(case):
 
 
 def main():
-    method = sys.argv[1] if len(sys.argv) > 1 else "LSODA"
-    target = HERE / (sys.argv[2] if len(sys.argv) > 2 else "result.csv")
-    case = json.loads((HERE / "case.json").read_text())
+    name, method, target = (sys.argv[1:] + [None] * 3)[:3]
+    name, method = name or "case", method or "LSODA"
+    target = HERE / (target or ("result.csv" if name == "case" else f"{name}.csv"))
+    case = json.loads((HERE / f"{name}.json").read_text(encoding="utf-8"))
     model = Model(case)
     state = model.start()
     tolerance = absolute(state)
