@@ -9,6 +9,8 @@
 //! 12.5 mm; the conductivity fitted); every other case is a prediction, and no
 //! case has a number of its own. The fitted value takes up whatever else is
 //! off (radiative fraction, convection, plume) and is no property of a wall.
+// Tables for `--nocapture`; helpers outside the test functions may unwrap.
+#![allow(clippy::print_stdout, clippy::unwrap_used)]
 
 mod common;
 

@@ -2,6 +2,8 @@
 //! (`doorglow::solve::integrator`): what was found in the crate behind it must
 //! not come through. Order and interpolant are checked on a problem that
 //! depends on time, where a wrong node of the method shows.
+// Tables for `--nocapture`; helpers outside the test functions may unwrap.
+#![allow(clippy::print_stdout, clippy::unwrap_used)]
 
 use doorglow::solve::integrator::{Equations, Outcome, Solution, Stretch, integrate};
 

@@ -1,5 +1,7 @@
 //! The single-room model against a second version of it, written in Python
 //! from docs/method.md alone (`tests/reference/second_version/`).
+// Tables for `--nocapture`; helpers outside the test functions may unwrap.
+#![allow(clippy::print_stdout, clippy::unwrap_used)]
 
 mod common;
 

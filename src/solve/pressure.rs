@@ -421,7 +421,9 @@ impl Passage {
                 }
                 let jet = (1.0 - leak) * flow;
                 let up = jet * self.deposit[direction][k];
-                let share = leak * by_height * flow;
+                // Gas from gaps goes in at its height, but hot gas rises.
+                let settles = (1.0 - by_height) * (1.0 - self.deposit[direction][k]);
+                let share = leak * (1.0 - settles) * flow;
                 stream.flow[k][UPPER] += up + share;
                 stream.flow[k][LOWER] += flow - up - share;
                 let gas = &layers[source[k]];
