@@ -106,6 +106,8 @@ quantities! {
     LowerWallTemperature, "wall below smoke level", Temperature, "Mean surface temperature of the walls below the interface.";
     FloorTemperature, "floor", Temperature, "Surface temperature of the floor.";
     FloorFlux, "radiant flux on the floor", Flux, "Radiation falling on the floor, less what a surface at the outside temperature would send back.";
+    Mixing, "exchange of layers by momentum", MassFlow, "Gas that changes places between the layers because momentum mixes them.";
+    MixedShare, "mixed by momentum", Ratio, "How far momentum mixes the room: 0 two layers, 1 well mixed.";
     LayerEmissivity, "upper layer emissivity", Ratio, "Emissivity of the upper layer (soot, CO2, H2O) over its mean beam length.";
     BurnedInSmoke, "burned in the smoke", Power, "Heat released by unburned fuel burning inside the layers of the room.";
     BurnedInJets, "burned at openings", Power, "Heat released in the jets that enter the room through its openings.";
@@ -117,6 +119,8 @@ quantities! {
     SpeedForward, "speed from first to second side", Speed, "Highest speed of the gas going from the first side to the second, at the opening before contraction.";
     SpeedBackward, "speed from second to first side", Speed, "Highest speed of the gas going from the second side to the first.";
     TemperatureForward, "temperature from first to second side", Temperature, "Mean temperature of the gas going from the first side to the second; empty when there is none.";
+    PaneTemperature, "pane", Temperature, "Temperature of the inner pane of a window; empty without glass.";
+    OutsideFlame, "flame above the head", Length, "Height of the flame outside above the head of the opening.";
     BurnedOutside, "burned outside", Power, "Heat that unburned fuel going to the open air would release there if it meets ignition; not fed back to the rooms.";
     // Items
     FreeRate, "free rate", Power, "Heat release that the item would have at its progress in clean air.";
@@ -232,6 +236,15 @@ pub enum Ended {
     Failed(f64, String),
 }
 
+/// A trigger of the plan that fired.
+#[derive(Debug, Clone, Copy, PartialEq, Serialize)]
+pub struct Fired {
+    /// Index in the plan's list of triggers.
+    pub trigger: usize,
+    /// Time at which its change began, s.
+    pub time: f64,
+}
+
 /// All time histories of one run.
 #[derive(Debug, Clone, Serialize)]
 pub struct Record {
@@ -247,6 +260,8 @@ pub struct Record {
     pub work: Work,
     /// What a user should know.
     pub flags: Vec<Flag>,
+    /// Triggers that fired, by time.
+    pub fired: Vec<Fired>,
     /// How it ended.
     pub ended: Ended,
 }

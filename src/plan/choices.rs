@@ -86,6 +86,8 @@ pub struct Choices {
     pub jet_lag: f64,
     /// Share of the mass at which burn-out begins, default 0.3.
     pub burnout_share: f64,
+    /// Factor on the mixing of layers by momentum, default 1 (0 switches it off).
+    pub mixing_factor: f64,
     /// Thickness of the interface at stations, m, default 0.5.
     pub profile_thickness: f64,
     /// Relative tolerance of the integration, default 1e-5.
@@ -123,6 +125,7 @@ impl Default for Choices {
             autoignition_full: 873.15,
             jet_lag: 1.0,
             burnout_share: 0.3,
+            mixing_factor: 1.0,
             profile_thickness: 0.5,
             tolerance: 1e-5,
         }

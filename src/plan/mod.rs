@@ -43,8 +43,13 @@ pub struct Plan {
     pub items: Vec<Item>,
     /// Where people are.
     pub stations: Vec<Station>,
-    /// Changes of openings, sorted by time.
+    /// Fans and ducts.
+    pub fans: Vec<Fan>,
+    /// Changes at stated times, sorted by time.
     pub actions: Vec<Action>,
+    /// Changes that wait for a condition: failing glass and doors, and actions
+    /// with `when`.
+    pub triggers: Vec<Trigger>,
     /// Sub-models and coefficients in use.
     pub choices: Choices,
     /// Name of the tactic played, if any.
@@ -160,6 +165,20 @@ pub enum OpeningKind {
     Window,
     /// Leakage, spread over the height.
     Gap,
+    /// A horizontal opening in a floor, ceiling or roof.
+    Hatch,
+    /// A stair: an inclined opening between two levels.
+    Stair,
+    /// The open border between two parts of one long room.
+    Division,
+}
+
+impl OpeningKind {
+    /// True for an opening whose flow is that of a horizontal one: the first
+    /// side lies below the second.
+    pub fn is_horizontal(self) -> bool {
+        matches!(self, Self::Hatch | Self::Stair)
+    }
 }
 
 /// Anything air passes through.
@@ -190,6 +209,144 @@ pub struct Opening {
     pub gap_coefficient: f64,
     /// Centre of the opening in the first room, m from its corner, when given.
     pub at: Option<[f64; 2]>,
+    /// Pressure of the wind on its outer face, Pa; zero indoors and in calm.
+    pub wind_pressure: f64,
+    /// Plan area of a hatch or stair when wholly open, m2 (its share that is
+    /// open is clear width over width); zero for vertical openings.
+    pub area: f64,
+    /// Factor on the buoyant exchange of a hatch or stair over that of a thin
+    /// square hole, 1 for a hatch.
+    pub exchange_factor: f64,
+    /// Glass that may crack and fall out, for a window.
+    pub pane: Option<Pane>,
+}
+
+/// A pane of glass heated by the room's gas and radiation.
+#[derive(Debug, Clone, PartialEq, Serialize)]
+pub struct Pane {
+    /// Words for it ("double glazing").
+    pub name: String,
+    /// Thickness of the inner pane, m.
+    pub thickness: f64,
+    /// Density, kg/m3.
+    pub density: f64,
+    /// Heat capacity, J/kg/K.
+    pub heat_capacity: f64,
+    /// Emissivity of its inner face.
+    pub emissivity: f64,
+}
+
+/// Index of a fan in [`Plan::fans`].
+#[derive(Debug, Clone, Copy, PartialEq, Eq, Hash, PartialOrd, Ord, Serialize)]
+pub struct FanId(pub usize);
+
+/// What a fan does.
+#[derive(Debug, Clone, Copy, PartialEq, Serialize)]
+pub enum FanKind {
+    /// A positive-pressure fan in front of an opening to the open air; blows in
+    /// through the given share of its clear width, the rest stays open.
+    PositivePressure {
+        /// The opening it stands at.
+        opening: OpeningId,
+        /// Share of the clear width that its cone covers, 0..1.
+        covers: f64,
+    },
+    /// Moves gas from one space to another: extract, supply or a duct between
+    /// rooms.
+    Duct {
+        /// Where it takes gas.
+        from: Space,
+        /// Height of the intake above the floor of that room, m.
+        intake: f64,
+        /// Where it blows gas.
+        to: Space,
+        /// Height of the outlet above the floor of that room, m.
+        outlet: f64,
+    },
+}
+
+/// A fan with a straight net curve from its free flow to its dead-end pressure.
+#[derive(Debug, Clone, PartialEq, Serialize)]
+pub struct Fan {
+    /// Name in the scenario file.
+    pub name: String,
+    /// What it does.
+    pub kind: FanKind,
+    /// Volume flow at zero pressure rise, m3/s.
+    pub free_flow: f64,
+    /// Pressure rise at which the flow stops, Pa.
+    pub dead_end_pressure: f64,
+    /// Runs at ignition.
+    pub running: bool,
+}
+
+/// What an action or trigger changes.
+#[derive(Debug, Clone, Copy, PartialEq, Serialize)]
+pub enum Effect {
+    /// Sets an opening to a clear width, m (0 shut).
+    ClearWidth {
+        /// Which opening.
+        opening: OpeningId,
+        /// Clear width when done, m.
+        width: f64,
+    },
+    /// Starts or stops a fan.
+    Fan {
+        /// Which fan.
+        fan: FanId,
+        /// Starts when true.
+        running: bool,
+    },
+}
+
+impl Effect {
+    /// The opening that it changes, if it is one.
+    pub fn opening(&self) -> Option<OpeningId> {
+        match self {
+            Self::ClearWidth { opening, .. } => Some(*opening),
+            Self::Fan { .. } => None,
+        }
+    }
+}
+
+/// A quantity that a trigger watches.
+#[derive(Debug, Clone, Copy, PartialEq, Serialize)]
+pub enum Watched {
+    /// Upper layer temperature of a room, K.
+    UpperTemperature(RoomId),
+    /// Height of the interface of a room, m.
+    Interface(RoomId),
+    /// Upper layer oxygen of a room, wet volume fraction.
+    UpperOxygen(RoomId),
+    /// Heat released in the whole building, W.
+    HeatRelease,
+    /// Rise of a pane over the room's start, K.
+    PaneRise(OpeningId),
+}
+
+/// A change that waits for a condition; fires once.
+#[derive(Debug, Clone, PartialEq, Serialize)]
+pub struct Trigger {
+    /// Name in the scenario file, or made from the opening ("window falls out").
+    pub name: String,
+    /// What is watched.
+    pub watched: Watched,
+    /// Fires when the quantity rises past the level (true) or falls past it.
+    pub rising: bool,
+    /// Level, in the unit of what is watched.
+    pub level: f64,
+    /// Not before this time, s.
+    pub not_before: f64,
+    /// Waits this long after the level is passed, s.
+    pub delay: f64,
+    /// Takes, s.
+    pub over: f64,
+    /// What it changes. Several triggers may name one opening; the widest wins.
+    pub effect: Effect,
+    /// What is done, in words.
+    pub what: String,
+    /// Why, in the user's words.
+    pub because: Option<String>,
 }
 
 /// How the burning of an item is given.
@@ -287,10 +444,8 @@ pub struct Action {
     pub time: f64,
     /// Takes, s.
     pub over: f64,
-    /// Which opening.
-    pub opening: OpeningId,
-    /// Clear width when done, m (0 shut).
-    pub clear_width: f64,
+    /// What it changes.
+    pub effect: Effect,
     /// What is done, in words ("open", "shut", "hand's width").
     pub what: String,
     /// Why, in the user's words.
