@@ -1,7 +1,7 @@
 //! Clear widths of the openings over time, and the times at which the run
 //! stops and starts again.
 
-use crate::plan::{Burning, Curve, Opening, OpeningKind, Plan};
+use crate::plan::{Burning, Curve, Effect, Opening, OpeningKind, Plan};
 
 /// One stretch over which a clear width runs linearly.
 #[derive(Debug, Clone, Copy)]
@@ -12,12 +12,47 @@ struct Move {
     to: f64,
 }
 
-/// Clear widths of all openings over time.
+/// Something that moves over time from where it stands at ignition: the clear
+/// width of an opening (m) or the running of a fan (0..1).
+#[derive(Debug, Clone)]
+struct Track {
+    start: f64,
+    moves: Vec<Move>,
+}
+
+impl Track {
+    fn at(&self, time: f64) -> f64 {
+        match self.moves.iter().rev().find(|m| m.start <= time) {
+            None => self.start,
+            Some(m) if time >= m.end => m.to,
+            Some(m) => m.from + (m.to - m.from) * (time - m.start) / (m.end - m.start),
+        }
+    }
+
+    /// Begins to move; a move under way ends where it is.
+    fn push(&mut self, time: f64, over: f64, to: f64) {
+        let from = self.at(time);
+        if let Some(last) = self.moves.last_mut() {
+            last.end = last.end.min(time.max(last.start));
+            last.to = from;
+        }
+        self.moves.push(Move {
+            start: time,
+            end: time + over,
+            from,
+            to,
+        });
+    }
+}
+
+/// Clear widths of all openings and running of all fans over time.
 #[derive(Debug, Clone)]
 pub struct Schedule {
-    moves: Vec<Vec<Move>>,
+    openings: Vec<Track>,
+    fans: Vec<Track>,
     /// Times in (0, end) at which the integration lands, rising.
     pub landings: Vec<Landing>,
+    end: f64,
 }
 
 /// A time at which the integration lands.
@@ -29,6 +64,9 @@ pub struct Landing {
     pub restart: bool,
 }
 
+/// Time in which a fan comes up to speed or stops, s (own choice).
+const FAN_RAMP: f64 = 2.0;
+
 /// Most points of a table on which the integration lands.
 const MOST_TABLE_LANDINGS: usize = 2000;
 
@@ -37,24 +75,14 @@ impl Schedule {
     /// over from wherever it is.
     pub fn new(plan: &Plan) -> Self {
         let mut schedule = Self {
-            moves: vec![Vec::new(); plan.openings.len()],
+            openings: plan.openings.iter().map(|o| still(o.clear_width)).collect(),
+            fans: plan.fans.iter().map(|f| still(f64::from(u8::from(f.running)))).collect(),
             landings: Vec::new(),
+            end: plan.end,
         };
         let mut jumps = Vec::new();
         for action in &plan.actions {
-            let o = action.opening.0;
-            let from = schedule.clear_width(&plan.openings[o], o, action.time);
-            if let Some(last) = schedule.moves[o].last_mut() {
-                last.end = last.end.min(action.time.max(last.start));
-                last.to = from;
-            }
-            let end = action.time + action.over.max(0.0);
-            schedule.moves[o].push(Move {
-                start: action.time,
-                end,
-                from,
-                to: action.clear_width,
-            });
+            let end = schedule.begin(action.effect, action.time, action.over);
             jumps.extend([action.time, end]);
         }
         let mut kinks = Vec::new();
@@ -75,14 +103,46 @@ impl Schedule {
         schedule
     }
 
-    /// Clear width of an opening at a time, m.
-    pub fn clear_width(&self, opening: &Opening, index: usize, time: f64) -> f64 {
-        let moves = &self.moves[index];
-        match moves.iter().rev().find(|m| m.start <= time) {
-            None => opening.clear_width,
-            Some(m) if time >= m.end => m.to,
-            Some(m) => m.from + (m.to - m.from) * (time - m.start) / (m.end - m.start),
+    /// Begins a change; gives the time at which it is done, s.
+    fn begin(&mut self, effect: Effect, time: f64, over: f64) -> f64 {
+        match effect {
+            Effect::ClearWidth { opening, width } => {
+                let over = over.max(0.0);
+                self.openings[opening.0].push(time, over, width);
+                time + over
+            }
+            Effect::Fan { fan, running } => {
+                let over = over.max(FAN_RAMP);
+                self.fans[fan.0].push(time, over, f64::from(u8::from(running)));
+                time + over
+            }
         }
+    }
+
+    /// Takes in a change that was not known at ignition, and lands on it.
+    pub fn add(&mut self, effect: Effect, time: f64, over: f64) {
+        let end = self.begin(effect, time, over);
+        let known: Vec<f64> = self.landings.iter().filter(|l| l.restart).map(|l| l.time).collect();
+        let kinks: Vec<f64> = self.landings.iter().filter(|l| !l.restart).map(|l| l.time).collect();
+        let jumps: Vec<f64> = known.into_iter().chain([time, end]).collect();
+        self.landings = merge(&jumps, &kinks, self.end);
+    }
+
+    /// Clear width of an opening at a time, m.
+    pub fn clear_width(&self, opening: usize, time: f64) -> f64 {
+        self.openings[opening].at(time)
+    }
+
+    /// How far a fan runs at a time, 0..1.
+    pub fn running(&self, fan: usize, time: f64) -> f64 {
+        self.fans[fan].at(time)
+    }
+}
+
+fn still(start: f64) -> Track {
+    Track {
+        start,
+        moves: Vec::new(),
     }
 }
 
@@ -91,7 +151,8 @@ impl Schedule {
 pub struct Stand {
     /// Clear width, m.
     pub clear_width: f64,
-    /// Flow coefficient times width, gap included, m.
+    /// Flow coefficient times width, gap included, m; times area (m2) for a
+    /// horizontal opening.
     pub coefficient_width: f64,
     /// Share of it that is gap.
     pub leak_share: f64,
@@ -99,6 +160,9 @@ pub struct Stand {
 
 /// How an opening stands at a clear width.
 pub fn stand(opening: &Opening, clear_width: f64) -> Stand {
+    if opening.kind.is_horizontal() {
+        return lying(opening, clear_width);
+    }
     let height = opening.head - opening.sill;
     let shut_share = if opening.kind == OpeningKind::Gap || opening.width <= 0.0 {
         1.0
@@ -112,6 +176,25 @@ pub fn stand(opening: &Opening, clear_width: f64) -> Stand {
         clear_width,
         coefficient_width: whole,
         leak_share: if whole > 0.0 { gap / whole } else { 1.0 },
+    }
+}
+
+fn lying(opening: &Opening, clear_width: f64) -> Stand {
+    let share = (clear_width / opening.width).clamp(0.0, 1.0);
+    let gap = opening.gap_coefficient * opening.gap_area * (1.0 - share);
+    Stand {
+        clear_width,
+        coefficient_width: opening.coefficient * opening.area * share + gap,
+        leak_share: 0.0,
+    }
+}
+
+/// Flow coefficient times area of an opening, m2.
+pub fn coefficient_area(opening: &Opening, stand: &Stand) -> f64 {
+    if opening.kind.is_horizontal() {
+        stand.coefficient_width
+    } else {
+        stand.coefficient_width * (opening.head - opening.sill)
     }
 }
 
