@@ -341,8 +341,11 @@ pub struct Trigger {
     pub delay: f64,
     /// Takes, s.
     pub over: f64,
-    /// What it changes. Several triggers may name one opening; the widest wins.
+    /// What it changes.
     pub effect: Effect,
+    /// Glass and doors that fail only ever open further: the change is left
+    /// out where it would close.
+    pub only_widens: bool,
     /// What is done, in words.
     pub what: String,
     /// Why, in the user's words.

@@ -11,8 +11,8 @@ use crate::physics::plume::Law;
 use crate::physics::view_factor::parallel_rectangles;
 use crate::physics::{conduction, humidity};
 use crate::plan::{
-    Burning, Choices, Curve, Fuel, Item, Lining, PlacementRule, Plan, PlumeModel, Room, RoomId,
-    Space,
+    Burning, Choices, Curve, Fuel, Item, Lining, Opening, PlacementRule, Plan, PlumeModel, Room,
+    RoomId, Space,
 };
 use thiserror::Error;
 
@@ -203,7 +203,13 @@ impl Building {
         }
         let slabs = slabs(plan, &mut rooms)?;
         let nodes: Vec<usize> = slabs.iter().map(|s| s.grid.capacity.len()).collect();
-        let layout = Layout::new(rooms.len(), gas.len(), plan.items.len(), &nodes);
+        let layout = Layout::new(
+            rooms.len(),
+            gas.len(),
+            plan.items.len(),
+            &nodes,
+            plan.openings.len(),
+        );
         let items = plan.items.iter().map(|i| source(i, plan)).collect();
         Ok(Self {
             air_oxygen: 0.2095 * (1.0 - vapour),
@@ -251,6 +257,9 @@ impl Building {
         for (s, slab) in self.slabs.iter().enumerate() {
             y[layout.slab(s)].fill(slab.start);
         }
+        for (o, opening) in plan.openings.iter().enumerate() {
+            y[layout.pane(o)] = pane_start(opening, plan);
+        }
         y
     }
 
@@ -276,6 +285,9 @@ impl Building {
         }
         for s in 0..self.slabs.len() {
             scale[layout.slab(s)].fill(300.0);
+        }
+        for opening in 0..layout.panes() {
+            scale[layout.pane(opening)] = 300.0;
         }
         let mass: f64 = self.rooms.iter().map(|r| r.air_mass).sum();
         for account in [
@@ -532,4 +544,14 @@ fn curve_peak(curve: &Curve) -> f64 {
         Curve::Growth { peak, .. } => *peak,
         Curve::Table(points) => points.iter().map(|p| p.1).fold(0.0, f64::max),
     }
+}
+
+/// Temperature of a pane at ignition, K: half way between the room and the
+/// other side.
+fn pane_start(opening: &Opening, plan: &Plan) -> f64 {
+    let temperature = |space| match space {
+        Space::Room(room) => plan.rooms[room.0].temperature,
+        Space::OpenAir => plan.open_air.temperature,
+    };
+    0.5 * (temperature(opening.from) + temperature(opening.to))
 }

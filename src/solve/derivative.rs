@@ -12,8 +12,9 @@ use super::pressure::{Balance, Problem, TightGroup};
 use super::schedule::{Schedule, stand};
 use crate::physics::extinction::{burning_factor, limiting_oxygen};
 use crate::physics::gas::{FIRST_FUEL, O2};
+use crate::physics::glass;
 use crate::physics::smooth::{min8, smoothstep};
-use crate::plan::Plan;
+use crate::plan::{FanKind, Plan};
 use nalgebra::Vector4;
 
 /// Mass fraction of fuel at which burning in jets is half stopped for want of
@@ -43,8 +44,8 @@ pub struct Model<'a> {
     pub plan: &'a Plan,
     /// What is fixed.
     pub building: &'a Building,
-    /// Openings over time.
-    pub schedule: &'a Schedule,
+    /// Openings and fans over time.
+    pub schedule: Schedule,
     /// Tight groups of the present stretch.
     pub groups: Vec<TightGroup>,
     /// Layers of the last evaluation.
@@ -77,20 +78,20 @@ pub struct Model<'a> {
 
 impl<'a> Model<'a> {
     /// A model with its working memory.
-    pub fn new(plan: &'a Plan, building: &'a Building, schedule: &'a Schedule) -> Self {
+    pub fn new(plan: &'a Plan, building: &'a Building) -> Self {
         let n = building.rooms.len();
         Self {
             plan,
             building,
-            schedule,
+            schedule: Schedule::new(plan),
             groups: Vec::with_capacity(n),
             layers: Layers::new(building),
-            balance: Balance::new(building, &plan.openings),
+            balance: Balance::new(building, &plan.openings, &plan.fans),
             items: vec![ItemRates::default(); plan.items.len()],
             radiation: Vec::with_capacity(n),
             in_layers: vec![0.0; n],
             in_jets: vec![0.0; n],
-            outside: vec![0.0; plan.openings.len()],
+            outside: vec![0.0; plan.openings.len() + plan.fans.len()],
             guards: 0,
             refusal: None,
             changes: Changes::new(building),
@@ -137,10 +138,7 @@ impl<'a> Model<'a> {
             return Err(Refusal::State);
         }
         self.guards += u64::from(self.layers.guarded);
-        for (o, opening) in self.plan.openings.iter().enumerate() {
-            let width = self.schedule.clear_width(opening, o, time);
-            self.balance.passages[o].stand = stand(opening, width);
-        }
+        self.set_passages(time);
         self.changes.clear();
         self.burn_items(time, y);
         self.exchange_heat(y, dy);
@@ -150,6 +148,7 @@ impl<'a> Model<'a> {
             .solve(&Problem {
                 building: self.building,
                 openings: &self.plan.openings,
+                fans: &self.plan.fans,
                 choices: &self.plan.choices,
                 layers: &self.layers,
                 changes: &self.changes,
@@ -159,6 +158,7 @@ impl<'a> Model<'a> {
             .map_err(|_| Refusal::Pressure)?;
         self.move_gas();
         self.burn_in_jets(y, dy);
+        self.heat_panes(y, dy);
         self.fill(dy);
         self.keep_ledger(dy);
         Ok(())
@@ -172,6 +172,29 @@ impl<'a> Model<'a> {
             self.group_pressure.push(pressure);
             for &room in &group.rooms {
                 self.mean_pressure[room] = pressure;
+            }
+        }
+    }
+
+    /// How openings stand and fans run at a time. A fan's cone takes its share
+    /// of the doorway.
+    fn set_passages(&mut self, time: f64) {
+        let passages = &mut self.balance.passages;
+        for (o, opening) in self.plan.openings.iter().enumerate() {
+            passages[o].stand = stand(opening, self.schedule.clear_width(o, time));
+        }
+        let openings = self.plan.openings.len();
+        for (f, fan) in self.plan.fans.iter().enumerate() {
+            let running = self.schedule.running(f, time);
+            passages[openings + f].running = running;
+            if let FanKind::PositivePressure { opening, covers } = fan.kind {
+                let o = opening.0;
+                passages[openings + f].stand = passages[o].stand;
+                let taken = covers
+                    * running
+                    * self.plan.openings[o].coefficient
+                    * passages[o].stand.clear_width;
+                passages[o].stand.coefficient_width -= taken;
             }
         }
     }
@@ -337,6 +360,16 @@ impl<'a> Model<'a> {
                 self.changes.transfer(&self.layers, u, l, stream.dragged);
             }
         }
+        for (room, mixing) in self.balance.mixing.iter().enumerate() {
+            let (l, u) = (2 * room + LOWER, 2 * room + UPPER);
+            let layers = &self.layers.layers;
+            let (up, down) = (
+                mixing.exchange * layers[l].density,
+                mixing.exchange * layers[u].density,
+            );
+            self.changes.transfer(&self.layers, l, u, up);
+            self.changes.transfer(&self.layers, u, l, down);
+        }
     }
 
     /// What the jets could burn, towards which their lagged heat moves.
@@ -397,6 +430,34 @@ impl<'a> Model<'a> {
         }
         oxygen += stream.lifted * self.layers.fractions(into[LOWER])[O2].max(0.0);
         (fuel, oxygen * fuel / need)
+    }
+
+    /// Glass heated by the layers and surfaces of the room behind it.
+    fn heat_panes(&self, y: &[f64], dy: &mut [f64]) {
+        for (o, opening) in self.plan.openings.iter().enumerate() {
+            let Some(pane) = &opening.pane else { continue };
+            let rooms = self.balance.passages[o].rooms();
+            let Some(room) = rooms[0].or(rooms[1]) else {
+                continue;
+            };
+            let interface = self.layers.interface[room];
+            let above = heat::share_above(opening.sill, opening.head, interface);
+            let gas = [LOWER, UPPER].map(|k| self.layers.layers[2 * room + k].temperature);
+            let place = self.building.layout.pane(o);
+            dy[place] = glass::pane_rate(
+                &glass::Pane {
+                    thickness: pane.thickness,
+                    density: pane.density,
+                    heat_capacity: pane.heat_capacity,
+                    emissivity: pane.emissivity,
+                },
+                y[place],
+                gas,
+                above,
+                self.radiation[room].at_wall(above),
+                self.building.air_temperature,
+            );
+        }
     }
 
     fn fill(&mut self, dy: &mut [f64]) {

@@ -4,6 +4,7 @@
 use super::derivative::{Model, Refusal};
 use super::groups::{OVERPRESSURE, RELEASE};
 use super::integrator::Equations;
+use super::triggers::Triggers;
 
 /// Share of a stretch by which evaluations keep off its ends, so that what
 /// jumps there is seen from inside.
@@ -19,6 +20,10 @@ pub struct Driver<'a, 'w> {
     pub interrupted: bool,
     /// Rooms made tight for their pressure.
     pub forced: Vec<bool>,
+    /// Changes that wait for a condition.
+    pub triggers: Triggers,
+    /// The last accepted step passed the level of a trigger.
+    pub triggered: bool,
     watch: &'w mut dyn FnMut(f64) -> bool,
     window: (f64, f64),
 }
@@ -28,10 +33,12 @@ impl<'a, 'w> Driver<'a, 'w> {
     pub fn new(model: Model<'a>, watch: &'w mut dyn FnMut(f64) -> bool) -> Self {
         let rooms = model.building.rooms.len();
         Self {
-            model,
             evaluations: 0,
             interrupted: false,
             forced: vec![false; rooms],
+            triggers: Triggers::new(model.plan.triggers.len()),
+            triggered: false,
+            model,
             watch,
             window: (0.0, 0.0),
         }
@@ -113,9 +120,11 @@ impl Equations for Driver<'_, '_> {
         self.evaluate(time, y, dy).is_ok()
     }
 
-    fn accepted(&mut self, time: f64, _y: &[f64]) -> bool {
+    fn accepted(&mut self, time: f64, y: &[f64]) -> bool {
         self.interrupted = (self.watch)(time);
+        self.triggered = self.triggers.passed(&self.model, time, y).is_some();
         self.interrupted
+            || self.triggered
             || (0..self.forced.len()).any(|room| self.strained(room))
             || (0..self.model.groups.len()).any(|group| self.relieved(group))
     }

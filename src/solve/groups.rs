@@ -7,7 +7,7 @@ use super::building::Building;
 use super::layers::Layers;
 use super::layout::{Account, LOWER, Layout, UPPER};
 use super::pressure::TightGroup;
-use super::schedule::Stand;
+use super::schedule::{Stand, coefficient_area};
 use crate::plan::{Opening, Plan, Space};
 
 /// Flow coefficient times area per volume of a room (or group) below which a
@@ -27,10 +27,6 @@ pub const OVERPRESSURE: f64 = 2000.0;
 /// Pressure of a room made tight at which it is let go again, Pa.
 pub const RELEASE: f64 = 500.0;
 
-fn area(opening: &Opening, stand: &Stand) -> f64 {
-    stand.coefficient_width * (opening.head - opening.sill)
-}
-
 /// Rooms joined by openings wide enough for a quasi-steady difference, each
 /// list rising, in the order of first rooms.
 fn joined(plan: &Plan, building: &Building, stands: &[Stand], forced: &[bool]) -> Vec<Vec<usize>> {
@@ -46,7 +42,7 @@ fn joined(plan: &Plan, building: &Building, stands: &[Stand], forced: &[bool]) -
             TIGHT
         };
         let volume = building.rooms[a.0].volume.min(building.rooms[b.0].volume);
-        if area(opening, stand) >= limit * volume {
+        if coefficient_area(opening, stand) >= limit * volume {
             let (keep, drop) = (label[a.0].min(label[b.0]), label[a.0].max(label[b.0]));
             label
                 .iter_mut()
@@ -76,7 +72,7 @@ pub fn tight(
                 .iter()
                 .zip(stands)
                 .filter(|(o, _)| leads_out(o, rooms))
-                .map(|(o, s)| area(o, s))
+                .map(|(o, s)| coefficient_area(o, s))
                 .sum();
             way_out < TIGHT * volume || rooms.iter().any(|r| forced[*r])
         })

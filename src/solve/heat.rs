@@ -6,7 +6,7 @@ use super::burning::ItemRates;
 use super::changes::Changes;
 use super::layers::{Layers, dot};
 use super::layout::{LOWER, UPPER};
-use super::pressure::Passage;
+use super::passage::Passage;
 use crate::physics::conduction;
 use crate::physics::emissivity::{layer_emissivity, mean_beam_length};
 use crate::physics::enclosure::{
@@ -43,7 +43,9 @@ pub struct RoomRadiation {
 }
 
 impl RoomRadiation {
-    fn of_wall(&self, above: f64) -> f64 {
+    /// Irradiation of a part of the wall, W/m2, whose given share lies above
+    /// the interface.
+    pub fn at_wall(&self, above: f64) -> f64 {
         self.whole[UPPER_WALL] * above + self.whole[LOWER_WALL] * (1.0 - above)
     }
 }
@@ -270,7 +272,7 @@ impl Scene<'_> {
                 continue;
             }
             let above = [self.above(opening, a, a), self.above(opening, b, a)];
-            let net = area * (radiation[a].of_wall(above[0]) - radiation[b].of_wall(above[1]));
+            let net = area * (radiation[a].at_wall(above[0]) - radiation[b].at_wall(above[1]));
             any = true;
             for (room, share, sign) in [(a, above[0], 1.0), (b, above[1], -1.0)] {
                 loss[room] += sign * net;
@@ -361,6 +363,9 @@ impl Scene<'_> {
                 continue;
             }
             let area = passage.stand.clear_width * (opening.head - opening.sill);
+            if area <= 0.0 {
+                continue;
+            }
             let above = self.above(opening, room, room);
             lost += area
                 * (above * radiation.stretch[0] * (radiation.whole[UPPER_WALL] - sky)

@@ -4,7 +4,7 @@
 //! Order: rooms (volume of the upper layer, species masses of lower and upper
 //! layer, burning in jets), items (progress, mass, flamed share, embers,
 //! oxygen breathed), slabs (node temperatures), mean pressure of tight groups
-//! (one place per room), ledger.
+//! (one place per room), panes (one place per opening), ledger.
 
 use std::ops::Range;
 
@@ -62,13 +62,20 @@ pub struct Layout {
     items_at: usize,
     slabs: Vec<Range<usize>>,
     pressures_at: usize,
+    panes_at: usize,
     ledger_at: usize,
     len: usize,
 }
 
 impl Layout {
     /// Layout for rooms, species, items and the node counts of the slabs.
-    pub fn new(rooms: usize, species: usize, items: usize, nodes: &[usize]) -> Self {
+    pub fn new(
+        rooms: usize,
+        species: usize,
+        items: usize,
+        nodes: &[usize],
+        openings: usize,
+    ) -> Self {
         let items_at = rooms * (2 + 2 * species);
         let mut at = items_at + items * ITEM_PLACES;
         let mut slabs = Vec::with_capacity(nodes.len());
@@ -77,12 +84,14 @@ impl Layout {
             at += n;
         }
         let pressures_at = at;
-        let ledger_at = pressures_at + rooms;
+        let panes_at = pressures_at + rooms;
+        let ledger_at = panes_at + openings;
         Self {
             species,
             items_at,
             slabs,
             pressures_at,
+            panes_at,
             ledger_at,
             len: ledger_at + ACCOUNTS,
         }
@@ -126,6 +135,16 @@ impl Layout {
     /// Mean gauge pressure of the tight group whose first room this is, Pa.
     pub fn pressure(&self, room: usize) -> usize {
         self.pressures_at + room
+    }
+
+    /// Temperature of an opening's inner pane, K; unused without glass.
+    pub fn pane(&self, opening: usize) -> usize {
+        self.panes_at + opening
+    }
+
+    /// Number of places for panes.
+    pub fn panes(&self) -> usize {
+        self.ledger_at - self.panes_at
     }
 
     /// An account of the ledger.

@@ -15,10 +15,12 @@ mod layers;
 mod layout;
 mod linear;
 mod observe;
+mod passage;
 mod pressure;
 mod run;
 mod schedule;
 mod stretches;
+mod triggers;
 
 pub use building::{LAYER_GUARD, PlanFault, START_LAYER, WALL_STRIPS};
 pub use run::run;

@@ -3,6 +3,7 @@
 use super::derivative::Model;
 use super::layers::dot;
 use super::layout::{ItemPlace, LOWER, UPPER};
+use crate::physics::external_flame;
 use crate::physics::gas::{CO, CO2, FIRST_FUEL, H2O, O2, SOOT};
 use crate::plan::Plan;
 use crate::record::{Column, Quantity, Subject};
@@ -51,7 +52,7 @@ impl Observer {
             self.room(model, room, y);
         }
         for opening in 0..model.plan.openings.len() {
-            self.opening(model, model.plan, opening);
+            self.opening(model, model.plan, opening, y);
         }
         for item in 0..model.plan.items.len() {
             self.item(model, item, y);
@@ -135,20 +136,30 @@ impl Observer {
         self.put(s, Q::FloorTemperature, surfaces[3]);
         let radiation = &model.radiation[room];
         self.put(s, Q::FloorFlux, scene.floor_flux(radiation, room));
+        let mixing = &model.balance.mixing[room];
+        let (low, up) = (low.density, up.density);
+        self.put(s, Q::Mixing, mixing.exchange * 0.5 * (low + up));
+        self.put(s, Q::MixedShare, mixing.share);
         self.put(s, Q::LayerEmissivity, radiation.emissivity);
         self.put(s, Q::BurnedInSmoke, model.in_layers[room]);
         self.put(s, Q::BurnedInJets, model.in_jets[room]);
     }
 
-    fn opening(&mut self, model: &Model<'_>, plan: &Plan, index: usize) {
+    fn opening(&mut self, model: &Model<'_>, plan: &Plan, index: usize, y: &[f64]) {
         use Quantity as Q;
         let s = Subject::Opening(index);
         let passage = &model.balance.passages[index];
+        let opening = &plan.openings[index];
         let [forward, backward] = &passage.streams;
         self.put(s, Q::ClearWidth, passage.stand.clear_width);
         self.put(s, Q::FlowForward, forward.total());
         self.put(s, Q::FlowBackward, backward.total());
-        let plane = passage.bands.neutral_plane();
+        // The two streams of a horizontal opening have no plane between them.
+        let plane = if opening.kind.is_horizontal() {
+            None
+        } else {
+            passage.bands.neutral_plane()
+        };
         self.put(s, Q::NeutralPlane, plane.unwrap_or(f64::NAN));
         for (direction, stream, quantity) in [
             (0, forward, Q::SpeedForward),
@@ -167,7 +178,19 @@ impl Observer {
             Q::TemperatureForward,
             mean(forward, |k| model.layers.layers[source[k]].temperature),
         );
-        debug_assert_eq!(plan.openings.len(), model.outside.len());
+
+        let pane = if opening.pane.is_some() {
+            y[model.building.layout.pane(index)]
+        } else {
+            f64::NAN
+        };
+        self.put(s, Q::PaneTemperature, pane);
+        let flame = external_flame::height_above_head(
+            model.outside[index],
+            passage.stand.clear_width,
+            opening.head - opening.sill,
+        );
+        self.put(s, Q::OutsideFlame, flame);
         self.put(s, Q::BurnedOutside, model.outside[index]);
     }
 
@@ -189,7 +212,7 @@ impl Observer {
     }
 }
 
-fn mean(stream: &super::pressure::Stream, value: impl Fn(usize) -> f64) -> f64 {
+fn mean(stream: &super::passage::Stream, value: impl Fn(usize) -> f64) -> f64 {
     let flows = [stream.of_layer(0), stream.of_layer(1)];
     let total = flows[0] + flows[1];
     if total > STILL {

@@ -8,11 +8,11 @@ use super::changes::Changes;
 use super::layers::Layers;
 use super::layout::{LOWER, UPPER};
 use super::linear::solve_in_place;
-use super::schedule::Stand;
-use crate::physics::opening_flow::{Bands, GRAVITY, REGULARISATION, Side, bands_regularised};
-use crate::physics::plume::buoyant_entrainment;
-use crate::physics::smooth::smoothstep;
-use crate::plan::{Choices, Opening, Space};
+use super::passage::Passage;
+use super::schedule::coefficient_area;
+use crate::physics::mixing;
+use crate::physics::opening_flow::REGULARISATION;
+use crate::plan::{Choices, Fan, Opening};
 
 /// Relative tolerance of the volume balance.
 const TOLERANCE: f64 = 1e-9;
@@ -23,10 +23,6 @@ const FLOOR: f64 = 2.8e-3;
 /// Most iterations before the state is given up.
 const MOST_ITERATIONS: usize = 60;
 
-/// Temperature step over which inflow turns from the lower to the upper
-/// layer, K.
-const DEPOSIT_STEP: f64 = 10.0;
-
 /// Fastest rate at which a tight group's mean pressure may even out near zero
 /// difference, 1/s: its orifice law is made linear below the difference that
 /// gives this rate, or the square root's slope there would limit the steps.
@@ -34,107 +30,6 @@ const EVENING_RATE: f64 = 2.0;
 
 /// Largest difference below which it may be made linear, Pa.
 const WIDEST_REGULARISATION: f64 = 10.0;
-
-/// Gas going one way through an opening.
-#[derive(Debug, Clone, Copy, Default)]
-pub struct Stream {
-    /// Flow from source layer (first index) into destination layer (second),
-    /// kg/s; outside air counts as lower.
-    pub flow: [[f64; 2]; 2],
-    /// Entrained from the lower into the upper layer by the rising part, kg/s.
-    pub lifted: f64,
-    /// Dragged from the upper into the lower layer by the falling part, kg/s.
-    pub dragged: f64,
-    /// Highest pressure difference that drives it, Pa.
-    pub peak_difference: f64,
-}
-
-impl Stream {
-    /// Whole flow, kg/s.
-    pub fn total(&self) -> f64 {
-        self.flow.iter().flatten().sum()
-    }
-
-    /// Flow that one layer of the source gives, kg/s.
-    pub fn of_layer(&self, layer: usize) -> f64 {
-        self.flow[layer][LOWER] + self.flow[layer][UPPER]
-    }
-}
-
-/// An opening in one evaluation.
-#[derive(Debug, Clone, Default)]
-pub struct Passage {
-    /// How it stands.
-    pub stand: Stand,
-    /// Forward and backward streams.
-    pub streams: [Stream; 2],
-    /// Its bands.
-    pub bands: Bands,
-    /// Layers of both sides, `[side][layer]`.
-    sides: [[usize; 2]; 2],
-    /// Rooms of both sides.
-    rooms: [Option<usize>; 2],
-    /// Volume growth per kg, `[direction][source layer][destination layer]`.
-    growth: [[[f64; 2]; 2]; 2],
-    /// Share that goes to the upper layer by buoyancy, `[direction][source]`.
-    deposit: [[f64; 2]; 2],
-    /// Difference below which the orifice law is linear, Pa.
-    regularisation: f64,
-}
-
-impl Passage {
-    /// A passage for an opening of the plan.
-    pub fn new(opening: &Opening, outside: usize) -> Self {
-        let layers = |space| match space {
-            Space::Room(room) => [2 * room.0 + LOWER, 2 * room.0 + UPPER],
-            Space::OpenAir => [outside; 2],
-        };
-        let room = |space| match space {
-            Space::Room(room) => Some(room.0),
-            Space::OpenAir => None,
-        };
-        Self {
-            sides: [layers(opening.from), layers(opening.to)],
-            rooms: [room(opening.from), room(opening.to)],
-            ..Self::default()
-        }
-    }
-
-    /// Rooms of both sides.
-    pub fn rooms(&self) -> [Option<usize>; 2] {
-        self.rooms
-    }
-
-    /// Layers of the source of a direction (0 forward, 1 backward).
-    pub fn source(&self, direction: usize) -> [usize; 2] {
-        self.sides[direction]
-    }
-
-    /// Layers of the destination of a direction.
-    pub fn destination(&self, direction: usize) -> [usize; 2] {
-        self.sides[1 - direction]
-    }
-
-    /// What does not depend on the pressures.
-    fn prepare(&mut self, layers: &Layers) {
-        for direction in 0..2 {
-            let source = self.source(direction);
-            let into = self.destination(direction);
-            if self.rooms[1 - direction].is_none() {
-                continue;
-            }
-            let (low, up) = (&layers.layers[into[LOWER]], &layers.layers[into[UPPER]]);
-            let reference =
-                low.available * low.temperature + (1.0 - low.available) * up.temperature;
-            for (k, &from) in source.iter().enumerate() {
-                let gas = &layers.layers[from];
-                self.deposit[direction][k] =
-                    smoothstep((gas.temperature - reference) / DEPOSIT_STEP);
-                self.growth[direction][k] = into.map(|into| layers.growth(from, into));
-            }
-        }
-    }
-}
 
 /// Rooms joined by openings that share one dynamic mean pressure.
 #[derive(Debug, Clone, PartialEq)]
@@ -147,12 +42,25 @@ pub struct TightGroup {
 #[derive(Debug, Clone, Copy, PartialEq, Eq)]
 pub struct NoBalance;
 
+/// Mixing of a room's layers by momentum.
+#[derive(Debug, Clone, Copy, Default)]
+pub struct Mixing {
+    /// Volume flow that comes into the room, m3/s.
+    pub through: f64,
+    /// How far the room is mixed, 0..1.
+    pub share: f64,
+    /// Volume that changes places each way, m3/s.
+    pub exchange: f64,
+}
+
 /// The balance with its working memory; the solution is kept as the start of
 /// the next one.
 #[derive(Debug, Clone)]
 pub struct Balance {
-    /// Openings.
+    /// Openings in the order of the plan, then fans.
     pub passages: Vec<Passage>,
+    /// Mixing of the layers by momentum, per room.
+    pub mixing: Vec<Mixing>,
     /// Newton iterations so far.
     pub iterations: u64,
     /// Gauge pressures at the rooms' floors (Pa), then the rates of the tight
@@ -177,6 +85,8 @@ pub struct Problem<'a> {
     pub building: &'a Building,
     /// Openings of the plan.
     pub openings: &'a [Opening],
+    /// Fans of the plan.
+    pub fans: &'a [Fan],
     /// Coefficients.
     pub choices: &'a Choices,
     /// Layers.
@@ -191,11 +101,17 @@ pub struct Problem<'a> {
 
 impl Balance {
     /// Working memory for a building.
-    pub fn new(building: &Building, openings: &[Opening]) -> Self {
+    pub fn new(building: &Building, openings: &[Opening], fans: &[Fan]) -> Self {
         let n = building.rooms.len();
         let outside = 2 * n;
+        let ways = openings.iter().enumerate();
+        let driven = fans.iter().enumerate();
         Self {
-            passages: openings.iter().map(|o| Passage::new(o, outside)).collect(),
+            passages: ways
+                .map(|(i, o)| Passage::of_opening(i, o, outside))
+                .chain(driven.map(|(i, f)| Passage::of_fan(i, f, openings, outside)))
+                .collect(),
+            mixing: vec![Mixing::default(); n],
             iterations: 0,
             solution: vec![0.0; 2 * n],
             rooms: n,
@@ -321,12 +237,13 @@ impl Balance {
         for (g, group) in problem.groups.iter().enumerate() {
             let leads_out = |passage: &Passage| {
                 let inside = |room: Option<usize>| room.and_then(|r| self.group_of[r]) == Some(g);
-                inside(passage.rooms[0]) != inside(passage.rooms[1])
+                let [first, second] = passage.rooms();
+                inside(first) != inside(second)
             };
             let ways = self.passages.iter().zip(problem.openings);
             let area: f64 = ways
                 .filter(|(passage, _)| leads_out(passage))
-                .map(|(passage, o)| passage.stand.coefficient_width * (o.head - o.sill))
+                .map(|(passage, o)| coefficient_area(o, &passage.stand))
                 .sum();
             let stiffness: f64 = group.rooms.iter().map(|r| self.stiffness[*r]).sum();
             let root = area * speed / (stiffness * EVENING_RATE);
@@ -350,13 +267,12 @@ impl Balance {
         for (scale, fixed) in self.scale.iter_mut().zip(&self.fixed) {
             *scale = fixed.abs() + FLOOR;
         }
-        for (passage, opening) in self.passages.iter_mut().zip(problem.openings) {
-            if passage.stand.coefficient_width <= 0.0 {
-                passage.streams = [Stream::default(); 2];
-                passage.bands = Bands::default();
+        for passage in &mut self.passages {
+            if passage.is_closed() {
+                passage.clear();
                 continue;
             }
-            passage.flow(problem, opening, &self.trial);
+            passage.flow(problem, &self.trial);
             passage.add_to_balance(
                 problem.layers,
                 &self.internal,
@@ -366,12 +282,54 @@ impl Balance {
                 unknowns,
             );
         }
+        self.mix(problem);
         self.groups(problem, unknowns);
         self.residual[..unknowns]
             .iter()
             .zip(&self.scale)
             .map(|(residual, scale)| residual.abs() / (TOLERANCE * scale))
             .fold(0.0, f64::max)
+    }
+
+    /// Mixing of the layers by the momentum of what goes through a room.
+    fn mix(&mut self, problem: &Problem<'_>) {
+        for mixing in &mut self.mixing {
+            *mixing = Mixing::default();
+        }
+        if problem.choices.mixing_factor <= 0.0 {
+            return;
+        }
+        for passage in &self.passages {
+            for direction in 0..2 {
+                let Some(room) = passage.rooms()[1 - direction] else {
+                    continue;
+                };
+                let stream = &passage.streams[direction];
+                let source = passage.source(direction);
+                for (k, from) in source.into_iter().enumerate() {
+                    self.mixing[room].through +=
+                        stream.of_layer(k) / problem.layers.layers[from].density;
+                }
+            }
+        }
+        for room in 0..self.rooms {
+            let hull = &problem.building.rooms[room];
+            let [low, up] = [2 * room + LOWER, 2 * room + UPPER].map(|k| &problem.layers.layers[k]);
+            let speed = self.mixing[room].through / (hull.width.min(hull.length) * hull.height);
+            let richardson = mixing::richardson(low.density, up.density, hull.height, speed);
+            let share = problem.choices.mixing_factor.min(1.0) * mixing::mixed_share(richardson);
+            let exchange = low.available
+                * up.available
+                * mixing::exchange_rate(
+                    low.volume.min(up.volume),
+                    share,
+                    hull.width.max(hull.length) / speed.max(1e-3),
+                );
+            self.mixing[room].share = share;
+            self.mixing[room].exchange = exchange;
+            let [lifted, sunk] = self.internal[room];
+            self.residual[room] += exchange * (low.density * lifted + up.density * sunk);
+        }
     }
 
     /// Compression of tight groups and the condition that ties their
@@ -395,189 +353,6 @@ impl Balance {
             }
             self.residual[at] = mean - problem.group_pressure[g];
             self.scale[at] = 1.0 + problem.group_pressure[g].abs();
-        }
-    }
-}
-
-impl Passage {
-    fn side(&self, problem: &Problem<'_>, which: usize, trial: &[f64]) -> Side {
-        let air = problem.building.air_density;
-        // Datum: the floor of the first side, or of the second when the first
-        // is the open air.
-        let level = |room: usize| problem.building.rooms[room].floor_level;
-        let datum = self.rooms[0].or(self.rooms[1]).map_or(0.0, level);
-        match self.rooms[which] {
-            None => Side {
-                pressure: -air * GRAVITY * datum,
-                interface: 0.0,
-                density: [air; 2],
-            },
-            Some(room) => {
-                let [l, u] = self.sides[which];
-                let density = [l, u].map(|k| problem.layers.layers[k].density);
-                let above = level(room) - datum;
-                Side {
-                    pressure: trial[room] - air * GRAVITY * level(room)
-                        + density[0] * GRAVITY * above,
-                    interface: problem.layers.interface[room] + above,
-                    density,
-                }
-            }
-        }
-    }
-
-    /// Streams at the trial pressures.
-    fn flow(&mut self, problem: &Problem<'_>, opening: &Opening, trial: &[f64]) {
-        let first = self.side(problem, 0, trial);
-        let second = self.side(problem, 1, trial);
-        self.bands = bands_regularised(
-            &first,
-            &second,
-            opening.sill,
-            opening.head,
-            self.stand.coefficient_width,
-            self.regularisation,
-        );
-        self.streams = [Stream::default(); 2];
-        for direction in 0..2 {
-            let interface = if direction == 0 {
-                second.interface
-            } else {
-                first.interface
-            };
-            self.gather(problem, direction, interface);
-        }
-    }
-
-    /// Gathers the bands of one direction into its stream.
-    fn gather(&mut self, problem: &Problem<'_>, direction: usize, interface: f64) {
-        let layers = &problem.layers.layers;
-        let source = self.source(direction);
-        let into = self.destination(direction);
-        let inside = self.rooms[1 - direction].is_some();
-        let leak = self.stand.leak_share;
-        let mut stream = Stream::default();
-        // Rising and falling parts: flow, heat over the layer they pass, and
-        // flow times height.
-        let (mut rising, mut falling) = ([0.0; 3], [0.0; 3]);
-        for band in self.bands.as_slice() {
-            if band.forward != (direction == 0) {
-                continue;
-            }
-            stream.peak_difference = stream.peak_difference.max(band.peak_difference);
-            let middle = 0.5 * (band.bottom + band.top);
-            let by_height = ((band.top - band.bottom.max(interface)) / (band.top - band.bottom))
-                .clamp(0.0, 1.0);
-            let own = usize::from(band.from_upper);
-            let weight = layers[source[own]].available;
-            for (k, flow) in [
-                (own, band.flow * weight),
-                (1 - own, band.flow * (1.0 - weight)),
-            ] {
-                if !inside {
-                    stream.flow[k][LOWER] += flow;
-                    continue;
-                }
-                let jet = (1.0 - leak) * flow;
-                let up = jet * self.deposit[direction][k];
-                // Gas from gaps goes in at its height, but hot gas rises.
-                let settles = (1.0 - by_height) * (1.0 - self.deposit[direction][k]);
-                let share = leak * (1.0 - settles) * flow;
-                stream.flow[k][UPPER] += up + share;
-                stream.flow[k][LOWER] += flow - up - share;
-                let gas = &layers[source[k]];
-                let warmer = gas.temperature - layers[into[LOWER]].temperature;
-                let cooler = layers[into[UPPER]].temperature - gas.temperature;
-                for (part, flow, excess) in
-                    [(&mut rising, up, warmer), (&mut falling, jet - up, cooler)]
-                {
-                    part[0] += flow;
-                    part[1] += flow * gas.heat_capacity * excess.max(0.0);
-                    part[2] += flow * middle;
-                }
-            }
-        }
-        if inside {
-            let [flow, heat, moment] = rising;
-            if flow > 0.0 {
-                stream.lifted = problem.choices.jet_factor
-                    * layers[into[LOWER]].available
-                    * buoyant_entrainment(
-                        flow,
-                        heat,
-                        (interface - moment / flow).max(0.0),
-                        layers[into[LOWER]].temperature,
-                    );
-            }
-            let [flow, heat, moment] = falling;
-            if flow > 0.0 {
-                stream.dragged = problem.choices.fall_factor
-                    * layers[into[UPPER]].available
-                    * buoyant_entrainment(
-                        flow,
-                        heat,
-                        (moment / flow - interface).max(0.0),
-                        layers[into[UPPER]].temperature,
-                    );
-            }
-        }
-        self.streams[direction] = stream;
-    }
-
-    /// Adds the passage to the volume balances of its rooms.
-    fn add_to_balance(
-        &self,
-        layers: &Layers,
-        internal: &[[f64; 2]],
-        residual: &mut [f64],
-        scale: &mut [f64],
-        matrix: &mut [f64],
-        unknowns: usize,
-    ) {
-        for direction in 0..2 {
-            let stream = &self.streams[direction];
-            let (from, to) = (self.rooms[direction], self.rooms[1 - direction]);
-            for k in 0..2 {
-                let out = stream.of_layer(k) / layers.layers[self.source(direction)[k]].density;
-                if let Some(room) = from {
-                    residual[room] -= out;
-                    scale[room] += out;
-                }
-                if let Some(room) = to {
-                    let growth = self.growth[direction][k];
-                    let gain = stream.flow[k][0] * growth[0] + stream.flow[k][1] * growth[1];
-                    residual[room] += gain;
-                    scale[room] += gain.abs();
-                }
-            }
-            if let Some(room) = to {
-                let [up, down] = internal[room];
-                residual[room] += stream.lifted * up + stream.dragged * down;
-            }
-        }
-        self.add_slopes(layers, matrix, unknowns);
-    }
-
-    fn add_slopes(&self, layers: &Layers, matrix: &mut [f64], unknowns: usize) {
-        for band in self.bands.as_slice() {
-            let direction = usize::from(!band.forward);
-            let own = usize::from(band.from_upper);
-            // Change of the volume balances with the pressure of the first side.
-            let sign = if band.forward { 1.0 } else { -1.0 };
-            let out = -sign * band.slope / layers.layers[self.source(direction)[own]].density;
-            let share = self.deposit[direction][own];
-            let growth = self.growth[direction][own];
-            let gain = sign * band.slope * (growth[0] * (1.0 - share) + growth[1] * share);
-            let (from, to) = (self.rooms[direction], self.rooms[1 - direction]);
-            for (row, change) in [(from, out), (to, gain)] {
-                let Some(row) = row else { continue };
-                if let Some(first) = self.rooms[0] {
-                    matrix[row * unknowns + first] += change;
-                }
-                if let Some(second) = self.rooms[1] {
-                    matrix[row * unknowns + second] -= change;
-                }
-            }
         }
     }
 }

@@ -8,7 +8,6 @@ use super::groups::content;
 use super::integrator::Solution;
 use super::layout::Account;
 use super::observe::Observer;
-use super::schedule::Schedule;
 use super::stretches::stretches;
 use crate::plan::Plan;
 use crate::record::{Closure, Ledger, Names, Record, Work};
@@ -27,8 +26,7 @@ pub fn run(
     watch: &mut dyn FnMut(f64) -> bool,
 ) -> Result<Record, PlanFault> {
     let building = Building::new(plan)?;
-    let schedule = Schedule::new(plan);
-    let mut driver = Driver::new(Model::new(plan, &building, &schedule), watch);
+    let mut driver = Driver::new(Model::new(plan, &building), watch);
     let mut state = building.initial_state(plan);
     let at_start = {
         let zero = vec![0.0; building.rooms.len()];
@@ -54,6 +52,7 @@ pub fn run(
         ledger: ledger(&building, &state, &at_start, &at_end),
         work: out.work,
         flags: out.watch.finish(),
+        fired: driver.triggers.fired.clone(),
         ended,
     })
 }
@@ -86,10 +85,17 @@ impl Output {
         }
     }
 
-    /// Rows of a stretch after its start, up to the time it reached.
-    pub fn stretch(&mut self, driver: &mut Driver<'_, '_>, solution: &Solution, start: f64) {
+    /// Rows of a stretch after its start, up to an end and the state there.
+    pub fn stretch(
+        &mut self,
+        driver: &mut Driver<'_, '_>,
+        solution: &Solution,
+        start: f64,
+        end: f64,
+        state: &[f64],
+    ) {
         let mut n = (start / self.every).floor() + 1.0;
-        while n * self.every < solution.time - 1e-9 {
+        while n * self.every < end - 1e-9 {
             let time = n * self.every;
             if time > start + 1e-9
                 && let Some(y) = solution.at(time)
@@ -98,7 +104,7 @@ impl Output {
             }
             n += 1.0;
         }
-        self.row(driver, solution.time, &solution.state);
+        self.row(driver, end, state);
     }
 }
 

@@ -76,7 +76,11 @@ impl Schedule {
     pub fn new(plan: &Plan) -> Self {
         let mut schedule = Self {
             openings: plan.openings.iter().map(|o| still(o.clear_width)).collect(),
-            fans: plan.fans.iter().map(|f| still(f64::from(u8::from(f.running)))).collect(),
+            fans: plan
+                .fans
+                .iter()
+                .map(|f| still(f64::from(u8::from(f.running))))
+                .collect(),
             landings: Vec::new(),
             end: plan.end,
         };
@@ -122,8 +126,18 @@ impl Schedule {
     /// Takes in a change that was not known at ignition, and lands on it.
     pub fn add(&mut self, effect: Effect, time: f64, over: f64) {
         let end = self.begin(effect, time, over);
-        let known: Vec<f64> = self.landings.iter().filter(|l| l.restart).map(|l| l.time).collect();
-        let kinks: Vec<f64> = self.landings.iter().filter(|l| !l.restart).map(|l| l.time).collect();
+        let known: Vec<f64> = self
+            .landings
+            .iter()
+            .filter(|l| l.restart)
+            .map(|l| l.time)
+            .collect();
+        let kinks: Vec<f64> = self
+            .landings
+            .iter()
+            .filter(|l| !l.restart)
+            .map(|l| l.time)
+            .collect();
         let jumps: Vec<f64> = known.into_iter().chain([time, end]).collect();
         self.landings = merge(&jumps, &kinks, self.end);
     }

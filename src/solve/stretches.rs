@@ -9,6 +9,7 @@ use super::integrator::{Outcome, Solution, Stretch, integrate};
 use super::pressure::TightGroup;
 use super::run::Output;
 use super::schedule::{Landing, Schedule, Stand, stand};
+use super::triggers::RESOLUTION as RESOLUTION_OF_TRIGGERS;
 use crate::plan::Plan;
 use crate::record::Ended;
 
@@ -29,18 +30,12 @@ const LOOKS: usize = 16;
 
 /// Plays the whole plan from the given state, which ends up as the last one.
 pub fn stretches(driver: &mut Driver<'_, '_>, state: &mut Vec<f64>, out: &mut Output) -> Ended {
-    let (plan, schedule) = (driver.model.plan, driver.model.schedule);
+    let plan = driver.model.plan;
     let scale = driver.model.building.scales();
-    let mut landings = schedule.landings.clone();
-    landings.push(Landing {
-        time: plan.end,
-        restart: true,
-    });
     let mut time = 0.0;
-    let mut next = 0;
     let mut first_step = RESTART_STEP;
-    while next < landings.len() {
-        let landing = landings[next];
+    while plan.end - time > 1e-9 {
+        let landing = next_landing(&driver.model.schedule, time, plan.end);
         let end = begin(driver, state, time, landing.time);
         if time <= 0.0 {
             out.row(driver, time, state);
@@ -54,26 +49,69 @@ pub fn stretches(driver: &mut Driver<'_, '_>, state: &mut Vec<f64>, out: &mut Ou
             absolute: ABSOLUTE_SHARE * plan.choices.tolerance,
         };
         let solution = integrate(driver, &scale, &stretch, state);
-        let (refusal, changed) = outcome(driver, &solution);
         out.work.steps += solution.steps;
         out.work.rejections += solution.rejections;
-        out.stretch(driver, &solution, time);
+        first_step = RESTART_STEP;
+        if driver.triggered && solution.outcome == Outcome::Stopped && !driver.interrupted {
+            let (crossed, there) = locate(driver, &solution, time);
+            out.stretch(driver, &solution, time, crossed, &there);
+            time = crossed;
+            *state = there;
+            fire(driver, time, state);
+            continue;
+        }
+        let (refusal, changed) = outcome(driver, &solution);
+        out.stretch(driver, &solution, time, solution.time, &solution.state);
         time = solution.time;
         state.clone_from(&solution.state);
-        first_step = RESTART_STEP;
         match &solution.outcome {
             Outcome::Stopped if driver.interrupted => return Ended::Interrupted(time),
             Outcome::Failed(why) if !changed => return Ended::Failed(time, explain(why, refusal)),
             _ => {}
         }
-        if landing.time - time < 1e-9 {
-            if !landing.restart && !changed && solution.outcome == Outcome::Reached {
-                first_step = solution.last_step;
-            }
-            next += 1;
+        let landed = landing.time - time < 1e-9;
+        if landed && !landing.restart && !changed && solution.outcome == Outcome::Reached {
+            first_step = solution.last_step;
         }
     }
     Ended::Completed
+}
+
+fn next_landing(schedule: &Schedule, time: f64, end: f64) -> Landing {
+    let next = schedule.landings.iter().find(|l| l.time > time + 1e-9);
+    next.copied().unwrap_or(Landing {
+        time: end,
+        restart: true,
+    })
+}
+
+/// Finds where in a stretch the first level of a trigger was passed, and the
+/// state there.
+fn locate(driver: &mut Driver<'_, '_>, solution: &Solution, start: f64) -> (f64, Vec<f64>) {
+    let mut rates = vec![0.0; solution.state.len()];
+    let (mut low, mut high) = (start, solution.time);
+    let mut there = solution.state.clone();
+    while high - low > RESOLUTION_OF_TRIGGERS {
+        let middle = 0.5 * (low + high);
+        let Some(y) = solution.at(middle) else { break };
+        let passed = driver.evaluate(middle, &y, &mut rates).is_ok()
+            && driver.triggers.passed(&driver.model, middle, &y).is_some();
+        if passed {
+            high = middle;
+            there = y;
+        } else {
+            low = middle;
+        }
+    }
+    (high, there)
+}
+
+/// Fires what is passed at a time and state.
+fn fire(driver: &mut Driver<'_, '_>, time: f64, y: &[f64]) {
+    let mut rates = vec![0.0; y.len()];
+    if driver.evaluate(time, y, &mut rates).is_ok() {
+        driver.triggers.fire(&mut driver.model, time, y);
+    }
 }
 
 /// Why the last evaluation was refused, and whether other rooms are tight
@@ -95,7 +133,7 @@ fn begin(driver: &mut Driver<'_, '_>, state: &mut [f64], time: f64, landing: f64
     let mut rates = vec![0.0; state.len()];
     // Every pass makes at least one more room tight.
     loop {
-        let schedule = driver.model.schedule;
+        let schedule = &driver.model.schedule;
         let (groups, end) = hold(plan, building, schedule, &driver.forced, time, landing);
         let old = std::mem::take(&mut driver.model.groups);
         settle(building, &mut driver.model.layers, state, &old, &groups);
@@ -119,7 +157,7 @@ fn stands(plan: &Plan, schedule: &Schedule, time: f64) -> Vec<Stand> {
     plan.openings
         .iter()
         .enumerate()
-        .map(|(o, opening)| stand(opening, schedule.clear_width(opening, o, time)))
+        .map(|(o, opening)| stand(opening, schedule.clear_width(o, time)))
         .collect()
 }
 
