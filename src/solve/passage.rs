@@ -21,6 +21,9 @@ const DEPOSIT_STEP: f64 = 10.0;
 /// place matters.
 const LYING_DEPTH: f64 = 1e-3;
 
+/// Area of the mouth of a duct, m2 (own choice; only its speed counts).
+const DUCT_MOUTH: f64 = 0.25;
+
 /// Band about the interface in which an intake draws from both layers, m (own
 /// choice).
 const INTAKE_BAND: f64 = 0.3;
@@ -134,6 +137,25 @@ impl Passage {
         match self.way {
             Way::Opening(_) => self.stand.coefficient_width <= 0.0,
             Way::Fan(_) => self.running <= 0.0,
+        }
+    }
+
+    /// Clear area, m2: of an opening, of the cone of a fan; of a duct that of a
+    /// mouth of a quarter of a square metre.
+    pub fn clear_area(&self, problem: &Problem<'_>) -> f64 {
+        let upright = |o: &Opening| self.stand.clear_width * (o.head - o.sill);
+        match self.way {
+            Way::Opening(o) if problem.openings[o].kind.is_horizontal() => {
+                let opening = &problem.openings[o];
+                opening.area * (self.stand.clear_width / opening.width).clamp(0.0, 1.0)
+            }
+            Way::Opening(o) => upright(&problem.openings[o]),
+            Way::Fan(f) => match problem.fans[f].kind {
+                FanKind::PositivePressure { opening, covers } => {
+                    covers * upright(&problem.openings[opening.0])
+                }
+                FanKind::Duct { .. } => DUCT_MOUTH,
+            },
         }
     }
 
