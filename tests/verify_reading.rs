@@ -6,6 +6,7 @@
 mod support;
 
 use doorglow::exposure::observe;
+use doorglow::plan::{Effect, OpeningId};
 use doorglow::reading::{Answer, Comeback, Kind, Moment, moments, summary};
 use doorglow::record::{Dimension, Ended, Quantity, Record, Subject};
 use doorglow::show::text::{Style, report};
@@ -155,7 +156,10 @@ fn verify_air_that_comes_after_burning_out_is_no_moment() {
     let mut late = plan.actions[0].clone();
     late.name = "late".into();
     late.time = 870.0;
-    late.clear_width = 0.95;
+    late.effect = Effect::ClearWidth {
+        opening: OpeningId(1),
+        width: 0.95,
+    };
     plan.actions.push(late);
     let read = moments(&record, &plan);
     assert_eq!(of(&read, Kind::AirEarliest).len(), 1);

@@ -6,7 +6,9 @@
 mod common;
 
 use common::{ZERO_CELSIUS, door, gap, lining, plan, polyurethane, room};
-use doorglow::plan::{Action, Burning, Curve, FuelId, Item, OpenAir, OpeningId, Plan, RoomId};
+use doorglow::plan::{
+    Action, Burning, Curve, Effect, FuelId, Item, OpenAir, OpeningId, Plan, RoomId,
+};
 use doorglow::record::{Ended, Quantity, Record, Subject};
 use doorglow::solve;
 use std::fmt::Write as _;
@@ -88,8 +90,10 @@ fn room_of(case: &Case) -> Plan {
         name: "entry".into(),
         time: case.entry,
         over: 2.0,
-        opening: OpeningId(0),
-        clear_width: 0.9,
+        effect: Effect::ClearWidth {
+            opening: OpeningId(0),
+            width: 0.9,
+        },
         what: "open".into(),
         because: None,
     }];

@@ -280,6 +280,10 @@ pub struct Fan {
     pub running: bool,
 }
 
+/// Words of [`Action::what`] and [`Trigger::what`] for a change that nobody
+/// makes: glass falls out, a door fails.
+pub const GIVES_WAY: [&str; 2] = ["falls out", "fails"];
+
 /// What an action or trigger changes.
 #[derive(Debug, Clone, Copy, PartialEq, Serialize)]
 pub enum Effect {

@@ -2,7 +2,7 @@
 
 use super::moment::{Kind, Moment, Weight, spoken};
 use super::reader::{Played, Reader};
-use crate::plan::Space;
+use crate::plan::{Effect, Space};
 use crate::record::{Dimension, Ended, Quantity, Subject};
 
 /// All actions that were played.
@@ -16,11 +16,15 @@ pub(super) fn moments(reader: &Reader<'_>) -> Vec<Moment> {
 
 /// One action, with the state of the fire that it meets.
 fn action(reader: &Reader<'_>, played: &Played<'_>) -> Moment {
-    let time = played.action.time;
-    let subject = Subject::Opening(played.action.opening.0);
+    let time = played.time;
+    let subject = played.opening().map_or(Subject::House, Subject::Opening);
     let moment = reader
         .moment(time, Kind::Action, subject, words(reader, played))
-        .with("clear width", played.action.clear_width, Dimension::Length)
+        .with(
+            "clear width",
+            played.after().unwrap_or(f64::NAN),
+            Dimension::Length,
+        )
         .with("heat burned", reader.burned().at(time), Dimension::Power)
         .weighing(Weight::Headline);
     let moment = match reader.main_item() {
@@ -52,7 +56,10 @@ fn at_the_fire(reader: &Reader<'_>, moment: Moment, item: usize) -> Moment {
 
 /// Adds what people at the opening meet when it is changed.
 fn at_stations(reader: &Reader<'_>, mut moment: Moment, played: &Played<'_>) -> Moment {
-    let Some(opening) = reader.plan.openings.get(played.action.opening.0) else {
+    let opening = played
+        .opening()
+        .and_then(|index| reader.plan.openings.get(index));
+    let Some(opening) = opening else {
         return moment;
     };
     let sides = [opening.from, opening.to];
@@ -74,20 +81,30 @@ fn at_stations(reader: &Reader<'_>, mut moment: Moment, played: &Played<'_>) -> 
     moment
 }
 
-/// The action in words: what becomes of the opening, and why.
+/// The change in words: what becomes of the opening or fan, and why.
 fn words(reader: &Reader<'_>, played: &Played<'_>) -> String {
-    let action = played.action;
-    let opening = reader.plan.openings.get(action.opening.0);
-    let name = opening.map_or_else(String::new, |opening| spoken(&opening.name));
-    let what = match action.what.as_str() {
-        "open" => "opened".to_owned(),
-        "shut" => "shut".to_owned(),
-        other if played.opens() => format!("opened to {other}"),
-        other => format!("held at {other}"),
+    let subject = match played.effect {
+        Effect::ClearWidth { opening, .. } => reader.plan.openings.get(opening.0).map(|o| &o.name),
+        Effect::Fan { fan, .. } => reader.plan.fans.get(fan.0).map(|f| &f.name),
     };
-    match &action.because {
-        Some(because) => format!("{}: {name} {what}; {because}", spoken(&action.name)),
-        None => format!("{}: {name} {what}", spoken(&action.name)),
+    let subject = subject.map_or_else(String::new, |name| spoken(name));
+    let what = match (played.effect, played.what) {
+        (Effect::Fan { running: true, .. }, _) => "started".to_owned(),
+        (Effect::Fan { running: false, .. }, _) => "stopped".to_owned(),
+        _ if played.by_itself => played.what.to_owned(),
+        (_, "open") => "opened".to_owned(),
+        (_, "shut") => "shut".to_owned(),
+        (_, other) if played.opens() => format!("opened to {other}"),
+        (_, other) => format!("held at {other}"),
+    };
+    let text = if played.by_itself {
+        format!("{subject} {what}")
+    } else {
+        format!("{}: {subject} {what}", spoken(played.name))
+    };
+    match played.because {
+        Some(because) => format!("{text}; {because}"),
+        None => text,
     }
 }
 

@@ -19,8 +19,10 @@ const FELT_RISE: f64 = 0.01;
 /// open air's. Densities go as 1/T; only their ratio counts.
 fn front_speed(kind: OpeningKind, cold: f64, gas: f64, height: f64) -> f64 {
     let froude = match kind {
-        OpeningKind::Door => cold_front::FROUDE_DOOR,
-        OpeningKind::Window | OpeningKind::Gap => cold_front::FROUDE_SLOT,
+        OpeningKind::Door | OpeningKind::Division => cold_front::FROUDE_DOOR,
+        OpeningKind::Window | OpeningKind::Gap | OpeningKind::Hatch | OpeningKind::Stair => {
+            cold_front::FROUDE_SLOT
+        }
     };
     cold_front::speed(froude, 1.0 / cold, 1.0 / gas, height)
 }
@@ -38,14 +40,11 @@ pub(super) fn moments(reader: &Reader<'_>) -> Vec<Moment> {
         .map_or(f64::INFINITY, |item| item.ignition);
     let gone = burned_out_at(reader, item).unwrap_or(f64::INFINITY);
     for (number, played) in reader.played.iter().enumerate() {
-        let opened = played.action.time;
+        let opened = played.time;
         if !played.opens() || opened < lit || opened > gone {
             continue;
         }
-        let next = reader
-            .played
-            .get(number + 1)
-            .map_or(reader.end, |p| p.action.time);
+        let next = reader.played.get(number + 1).map_or(reader.end, |p| p.time);
         out.extend(front(reader, item, number, played));
         out.extend(felt(reader, item, played, next));
     }
@@ -55,14 +54,18 @@ pub(super) fn moments(reader: &Reader<'_>) -> Vec<Moment> {
 /// Arrival of the front from an opening to the open air.
 fn front(reader: &Reader<'_>, item: usize, number: usize, played: &Played<'_>) -> Option<Moment> {
     let plan = reader.plan;
-    let opening = plan.openings.get(played.action.opening.0)?;
+    let index = played.opening()?;
+    let opening = plan.openings.get(index)?;
+    if opening.kind.is_horizontal() {
+        return None;
+    }
     let first = match (opening.from, opening.to) {
         (Space::Room(room), Space::OpenAir) | (Space::OpenAir, Space::Room(room)) => room.0,
         _ => return None,
     };
     let seat = plan.items.get(item)?.room.0;
     let way = way(plan, &widths_after(reader, number), first, seat)?;
-    let opened = played.action.time;
+    let opened = played.time;
     let (mut delay, mut path) = (0.0, 0.0);
     for (step, &room) in way.rooms.iter().enumerate() {
         let gas = reader
@@ -74,7 +77,7 @@ fn front(reader: &Reader<'_>, item: usize, number: usize, played: &Played<'_>) -
             return None;
         }
         let entry = if step == 0 {
-            Some(played.action.opening.0)
+            Some(index)
         } else {
             way.openings.get(step - 1).copied()
         };
@@ -88,12 +91,7 @@ fn front(reader: &Reader<'_>, item: usize, number: usize, played: &Played<'_>) -
     let arrival = opened + delay;
     (arrival <= reader.end).then(|| {
         reader
-            .moment(
-                arrival,
-                Kind::AirEarliest,
-                Subject::Opening(played.action.opening.0),
-                text,
-            )
+            .moment(arrival, Kind::AirEarliest, Subject::Opening(index), text)
             .with("way", path, Dimension::Length)
             .with("speed of the front", path / delay, Dimension::Speed)
     })
@@ -101,7 +99,7 @@ fn front(reader: &Reader<'_>, item: usize, number: usize, played: &Played<'_>) -
 
 /// When the oxygen at the flame base has risen, before the next action.
 fn felt(reader: &Reader<'_>, item: usize, played: &Played<'_>, next: f64) -> Option<Moment> {
-    let opened = played.action.time;
+    let opened = played.time;
     let subject = Subject::Item(item);
     let base = reader.history(subject, Quantity::BaseOxygen);
     let before = base.at(opened);
@@ -127,8 +125,10 @@ fn felt(reader: &Reader<'_>, item: usize, played: &Played<'_>, next: f64) -> Opt
 fn widths_after(reader: &Reader<'_>, number: usize) -> Vec<f64> {
     let mut widths: Vec<f64> = reader.plan.openings.iter().map(|o| o.clear_width).collect();
     for played in reader.played.iter().take(number + 1) {
-        if let Some(width) = widths.get_mut(played.action.opening.0) {
-            *width = played.action.clear_width;
+        if let (Some(opening), Some(after)) = (played.opening(), played.after())
+            && let Some(width) = widths.get_mut(opening)
+        {
+            *width = after;
         }
     }
     widths
@@ -155,8 +155,8 @@ fn way(plan: &Plan, widths: &[f64], first: usize, last: usize) -> Option<Way> {
             let (Space::Room(a), Space::Room(b)) = (opening.from, opening.to) else {
                 continue;
             };
-            let open =
-                opening.kind == OpeningKind::Door && widths.get(index).is_some_and(|w| *w > 0.0);
+            let walked = matches!(opening.kind, OpeningKind::Door | OpeningKind::Division);
+            let open = walked && widths.get(index).is_some_and(|w| *w > 0.0);
             let next = match room {
                 _ if !open => continue,
                 room if room == a.0 => b.0,

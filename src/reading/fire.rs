@@ -177,10 +177,10 @@ pub(super) fn back_up(reader: &Reader<'_>) -> Vec<Moment> {
     let openings: Vec<_> = reader.played.iter().filter(|p| p.opens()).collect();
     let mut out = Vec::new();
     for (number, opening) in openings.iter().enumerate() {
-        let from = opening.action.time;
+        let from = opening.time;
         let to = openings
             .get(number + 1)
-            .map_or(reader.end, |next| next.action.time);
+            .map_or(reader.end, |next| next.time);
         let Some(level) = starved_level(reader, from) else {
             continue;
         };

@@ -12,6 +12,7 @@ mod fire;
 mod flashover;
 mod history;
 mod moment;
+mod played;
 mod reader;
 mod rooms;
 mod stations;

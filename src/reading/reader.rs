@@ -5,7 +5,9 @@ use std::borrow::Cow;
 
 use super::history::{History, Side, Spell};
 use super::moment::{Band, Kind, Moment, Number, Since, Weight, spoken};
-use crate::plan::{Action, OpeningKind, Plan, Space};
+pub(super) use super::played::Played;
+use super::played::played;
+use crate::plan::{OpeningKind, Plan, Space};
 use crate::record::{Dimension, Quantity, Record, Subject};
 
 /// Earliest and latest share of the time since an opening: -60 % and +130 %,
@@ -16,27 +18,11 @@ const BAND: [f64; 2] = [0.4, 2.3];
 /// Free rates below this say nothing about shortage of air, W \[choice\].
 const SMALLEST_FREE_RATE: f64 = 5e3;
 
-/// An action as it was played.
-#[derive(Debug, Clone, Copy)]
-pub(super) struct Played<'a> {
-    /// The action.
-    pub action: &'a Action,
-    /// Clear width of its opening before it, m.
-    pub before: f64,
-}
-
-impl Played<'_> {
-    /// True when the action makes its opening wider.
-    pub fn opens(&self) -> bool {
-        self.action.clear_width > self.before
-    }
-}
-
 /// The record with its plan, prepared for reading.
 pub(super) struct Reader<'a> {
     pub record: &'a Record,
     pub plan: &'a Plan,
-    /// Actions that began within the record, by time.
+    /// Changes that began within the record, by time.
     pub played: Vec<Played<'a>>,
     /// Last time of the record, s.
     pub end: f64,
@@ -78,7 +64,7 @@ impl<'a> Reader<'a> {
         Self {
             record,
             plan,
-            played: played(plan, end),
+            played: played(record, plan, end),
             end,
             burned,
             free,
@@ -108,7 +94,7 @@ impl<'a> Reader<'a> {
 
     /// Times at which a new stage begins: the actions.
     pub fn stage_starts(&self) -> Vec<f64> {
-        let mut starts: Vec<f64> = self.played.iter().map(|p| p.action.time).collect();
+        let mut starts: Vec<f64> = self.played.iter().map(|p| p.time).collect();
         starts.dedup();
         starts
     }
@@ -136,10 +122,10 @@ impl<'a> Reader<'a> {
         self.played
             .iter()
             .rev()
-            .find(|played| played.action.time <= time)
+            .find(|played| played.time <= time)
             .map(|played| Since {
-                action: played.action.name.clone(),
-                seconds: time - played.action.time,
+                action: played.name.to_owned(),
+                seconds: time - played.time,
             })
     }
 
@@ -148,13 +134,13 @@ impl<'a> Reader<'a> {
         self.played
             .iter()
             .rev()
-            .find(|played| played.opens() && played.action.time <= time)
+            .find(|played| played.opens() && played.time <= time)
     }
 
     /// Earliest and latest time to expect for something that follows from an
     /// opening on a burning building; `None` before one.
     pub fn band(&self, time: f64) -> Option<Band> {
-        let opening = self.last_opening(time)?.action.time;
+        let opening = self.last_opening(time)?.time;
         let lit = self.plan.items.iter().any(|item| item.ignition < opening);
         (lit && time > opening).then(|| Band {
             earliest: opening + BAND[0] * (time - opening),
@@ -291,21 +277,4 @@ fn total(record: &Record, plan: &Plan, quantity: Quantity) -> Vec<f64> {
         }
     }
     sum
-}
-
-/// Actions that begin by `end`, with the clear width that each one found.
-fn played(plan: &Plan, end: f64) -> Vec<Played<'_>> {
-    let mut widths: Vec<f64> = plan.openings.iter().map(|o| o.clear_width).collect();
-    let mut out = Vec::new();
-    for action in plan.actions.iter().filter(|action| action.time <= end) {
-        let Some(width) = widths.get_mut(action.opening.0) else {
-            continue;
-        };
-        out.push(Played {
-            action,
-            before: *width,
-        });
-        *width = action.clear_width;
-    }
-    out
 }

@@ -226,10 +226,10 @@ fn first_opening(reader: &Reader<'_>) -> Option<FirstOpening> {
     reader
         .played
         .iter()
-        .find(|played| played.opens() && played.action.time > lit)
+        .find(|played| played.opens() && played.time > lit)
         .map(|played| FirstOpening {
-            action: played.action.name.clone(),
-            time: played.action.time,
+            action: played.name.to_owned(),
+            time: played.time,
         })
 }
 

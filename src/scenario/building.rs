@@ -2,7 +2,7 @@
 
 use super::hand;
 use super::resolve::{energy, stands_open};
-use crate::plan::{Burning, Curve, Item, Opening, OpeningKind, Plan, RoomId, Space};
+use crate::plan::{Burning, Curve, Effect, Item, Opening, OpeningKind, Plan, RoomId, Space};
 use std::fmt::Write as _;
 
 /// Time after ignition at which linings are judged, s.
@@ -278,24 +278,38 @@ fn actions(out: &mut String, plan: &Plan) {
         line!(out, "  none");
     }
     for action in &plan.actions {
-        let Some(opening) = plan.openings.get(action.opening.0) else {
-            continue;
-        };
         let because = action
             .because
             .as_ref()
             .map_or_else(String::new, |because| format!(" ({because})"));
-        let factor = hand::opening_factor(action.clear_width, opening.head - opening.sill);
-        line!(
-            out,
-            "  {:>8}  {}: {} {}{because}; {:.2} m clear, {:.2} MW by hand",
-            clock(action.time),
-            action.name,
-            opening.name,
-            action.what,
-            action.clear_width,
-            hand::air_limit(factor) / 1e6
-        );
+        let done = done(plan, action.effect, &action.what, &because);
+        line!(out, "  {:>8}  {}: {done}", clock(action.time), action.name);
+    }
+}
+
+/// What a change does, in words and by hand.
+fn done(plan: &Plan, effect: Effect, what: &str, because: &str) -> String {
+    match effect {
+        Effect::ClearWidth { opening, width } => {
+            let Some(opening) = plan.openings.get(opening.0) else {
+                return String::new();
+            };
+            if opening.kind.is_horizontal() {
+                let area = opening.area * width / opening.width;
+                return format!("{} {what}{because}; {area:.2} m2", opening.name);
+            }
+            let factor = hand::opening_factor(width, opening.head - opening.sill);
+            format!(
+                "{} {what}{because}; {width:.2} m clear, {:.2} MW by hand",
+                opening.name,
+                hand::air_limit(factor) / 1e6
+            )
+        }
+        Effect::Fan { fan, running } => {
+            let name = plan.fans.get(fan.0).map_or("", |fan| fan.name.as_str());
+            let verb = if running { "starts" } else { "stops" };
+            format!("{name} {verb}{because}")
+        }
     }
 }
 

@@ -153,6 +153,9 @@ impl Writer {
             OpeningKind::Door => "door",
             OpeningKind::Window => "window",
             OpeningKind::Gap => "gap",
+            OpeningKind::Hatch => "hatch",
+            OpeningKind::Stair => "stair",
+            OpeningKind::Division => "division",
         };
         self.text("kind", kind);
         let sides = [opening.from, opening.to].map(|side| match side {
@@ -283,7 +286,10 @@ impl Writer {
         self.line("[[action]]");
         self.text("name", &action.name);
         self.quantity("at", action.time, Dimension::Time);
-        let opening = &plan.openings[action.opening.0].name;
+        let Some(opening) = action.effect.opening() else {
+            return;
+        };
+        let opening = &plan.openings[opening.0].name;
         match action.what.as_str() {
             "open" | "shut" => self.text(&action.what, opening),
             what => {

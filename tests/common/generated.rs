@@ -2,7 +2,7 @@
 #![allow(dead_code)]
 
 use doorglow::plan::{
-    Action, Burning, Choices, Course, Curve, Fuel, FuelId, Item, Lining, OpenAir, Opening,
+    Action, Burning, Choices, Course, Curve, Effect, Fuel, FuelId, Item, Lining, OpenAir, Opening,
     OpeningId, OpeningKind, PlacementRule, Plan, PlumeModel, Room, RoomId, SharedWall, Space,
 };
 
@@ -223,6 +223,10 @@ fn opening(dice: &mut Dice, rooms: &[Room], number: usize, from: usize, to: Spac
         gap_area: if tight { 0.0 } else { dice.decades(1e-4, 3e-2) },
         gap_coefficient: 0.6,
         at: None,
+        wind_pressure: 0.0,
+        area: 0.0,
+        exchange_factor: 1.0,
+        pane: None,
     }
 }
 
@@ -309,8 +313,10 @@ fn actions(dice: &mut Dice, openings: &[Opening], end: f64) -> Vec<Action> {
             } else {
                 dice.between(0.0, 10.0)
             },
-            opening: OpeningId(index),
-            clear_width: share * width,
+            effect: Effect::ClearWidth {
+                opening: OpeningId(index),
+                width: share * width,
+            },
             what: "set".into(),
             because: None,
         });
@@ -434,6 +440,8 @@ pub fn plan(seed: u64) -> Plan {
         fuels,
         items,
         stations: Vec::new(),
+        fans: Vec::new(),
+        triggers: Vec::new(),
         actions,
         choices,
         tactic: None,

@@ -107,6 +107,10 @@ pub fn door(
         gap_area: 0.0,
         gap_coefficient: 0.6,
         at: None,
+        wind_pressure: 0.0,
+        area: 0.0,
+        exchange_factor: 1.0,
+        pane: None,
     }
 }
 
@@ -125,6 +129,10 @@ pub fn gap(room: usize, height: f64, area: f64) -> Opening {
         gap_area: area,
         gap_coefficient: 0.6,
         at: None,
+        wind_pressure: 0.0,
+        area: 0.0,
+        exchange_factor: 1.0,
+        pane: None,
     }
 }
 
@@ -170,7 +178,9 @@ pub fn plan(
         fuels,
         items,
         stations: Vec::new(),
+        fans: Vec::new(),
         actions: Vec::new(),
+        triggers: Vec::new(),
         choices: Choices::default(),
         tactic: None,
     }

@@ -3,8 +3,8 @@
 //! a house in Kestrova; no number in it is a result.
 
 use doorglow::plan::{
-    Action, Burning, Choices, Course, Curve, Fuel, FuelId, Item, Limits, Lining, OpenAir, Opening,
-    OpeningId, OpeningKind, Plan, Room, RoomId, Space, Station,
+    Action, Burning, Choices, Course, Curve, Effect, Fuel, FuelId, Item, Limits, Lining, OpenAir,
+    Opening, OpeningId, OpeningKind, Plan, Room, RoomId, Space, Station,
 };
 use doorglow::record::{Column, Ended, Flag, Ledger, Names, Quantity, Record, Subject, Work};
 
@@ -23,6 +23,10 @@ pub fn plan() -> Plan {
         gap_area: 0.01,
         gap_coefficient: 0.6,
         at: None,
+        wind_pressure: 0.0,
+        area: 0.0,
+        exchange_factor: 1.0,
+        pane: None,
     };
     let (bedroom, hall) = (Space::Room(RoomId(0)), Space::Room(RoomId(1)));
     Plan {
@@ -58,6 +62,8 @@ pub fn plan() -> Plan {
                 visibility: 3.0,
             },
         }],
+        fans: Vec::new(),
+        triggers: Vec::new(),
         actions: vec![
             action("entry", 480.0, 0.9, "open"),
             action("hold the door", 540.0, 0.13, "hand's width"),
@@ -136,8 +142,10 @@ fn action(name: &str, time: f64, clear_width: f64, what: &str) -> Action {
         name: name.to_owned(),
         time,
         over: 2.0,
-        opening: OpeningId(1),
-        clear_width,
+        effect: Effect::ClearWidth {
+            opening: OpeningId(1),
+            width: clear_width,
+        },
         what: what.to_owned(),
         because: None,
     }
@@ -203,6 +211,7 @@ pub fn record() -> Record {
             duration: 30.0,
             what: "an invented flag".to_owned(),
         }],
+        fired: Vec::new(),
         ended: Ended::Completed,
     }
 }

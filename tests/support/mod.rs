@@ -4,8 +4,8 @@
 #![allow(dead_code, clippy::ptr_arg)]
 
 use doorglow::plan::{
-    Action, Burning, Choices, Course, Curve, Fuel, FuelId, Item, Limits, Lining, OpenAir, Opening,
-    OpeningId, OpeningKind, Plan, Room, RoomId, Space, Station,
+    Action, Burning, Choices, Course, Curve, Effect, Fuel, FuelId, Item, Limits, Lining, OpenAir,
+    Opening, OpeningId, OpeningKind, Plan, Room, RoomId, Space, Station,
 };
 use doorglow::record::{
     Closure, Column, Ended, Flag, Ledger, Names, Quantity, Record, Subject, Work,
@@ -56,6 +56,10 @@ fn door(name: &str, from: Space, to: Space, clear_width: f64) -> Opening {
         gap_area: 0.01,
         gap_coefficient: 0.6,
         at: None,
+        wind_pressure: 0.0,
+        area: 0.0,
+        exchange_factor: 1.0,
+        pane: None,
     }
 }
 
@@ -126,12 +130,16 @@ pub fn plan() -> Plan {
                 visibility: 3.0,
             },
         }],
+        fans: Vec::new(),
+        triggers: Vec::new(),
         actions: vec![Action {
             name: "entry".into(),
             time: 480.0,
             over: 2.0,
-            opening: OpeningId(1),
-            clear_width: 0.9,
+            effect: Effect::ClearWidth {
+                opening: OpeningId(1),
+                width: 0.9,
+            },
             what: "open".into(),
             because: Some("crew makes entry".into()),
         }],
@@ -187,6 +195,7 @@ pub fn drawn(plan: &Plan, until: u32, lines: &Lines) -> Record {
             duration: 55.0,
             what: "hall nearly mixed: two layers are doubtful there".into(),
         }],
+        fired: Vec::new(),
         ended: Ended::Completed,
     }
 }

@@ -5,7 +5,7 @@ use super::super::fields::Of;
 use super::super::names;
 use super::super::read::{Located, Opened, Sheet, TacticSheet, Values};
 use super::{Resolver, same_name, unwanted, wanted};
-use crate::plan::{Action, Opening, OpeningId, OpeningKind};
+use crate::plan::{Action, Effect, Opening, OpeningId, OpeningKind};
 use crate::units::{Dimension, rounded};
 use std::ops::Range;
 
@@ -113,8 +113,10 @@ impl Resolver<'_> {
             name: values.text("name")?.to_owned(),
             time: time?,
             over: values.number("over")?,
-            opening,
-            clear_width,
+            effect: Effect::ClearWidth {
+                opening,
+                width: clear_width,
+            },
             what: opened.value.text,
             because: values.text("because").map(str::to_owned),
         })
@@ -264,8 +266,11 @@ impl Resolver<'_> {
             state.1 = opening.clear_width;
         }
         for Placed { action, span } in placed {
-            let (until, clear) = moving[action.opening.0];
-            let name = &openings[action.opening.0].name;
+            let Effect::ClearWidth { opening, width } = action.effect else {
+                continue;
+            };
+            let (until, clear) = moving[opening.0];
+            let name = &openings[opening.0].name;
             if action.time < until {
                 self.note(
                     Fault::error(
@@ -276,7 +281,7 @@ impl Resolver<'_> {
                     .label(format!("until {until} s"))
                     .help("begin later, or let the movement before take less time"),
                 );
-            } else if action.clear_width == clear {
+            } else if width == clear {
                 self.note(
                     Fault::caution(
                         span.clone(),
@@ -288,7 +293,7 @@ impl Resolver<'_> {
                     .help("take it out, or check the position before it"),
                 );
             }
-            moving[action.opening.0] = (action.time + action.over, action.clear_width);
+            moving[opening.0] = (action.time + action.over, width);
         }
     }
 }

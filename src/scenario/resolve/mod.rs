@@ -66,7 +66,9 @@ impl<'a> Resolver<'a> {
             fuels,
             items,
             stations,
+            fans: Vec::new(),
             actions,
+            triggers: Vec::new(),
             choices: self.choices(),
             tactic: tactic.map(str::to_owned),
         };

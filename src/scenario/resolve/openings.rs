@@ -51,6 +51,10 @@ impl Resolver<'_> {
             gap_area: self.gap_area(values, kind, from, to),
             gap_coefficient: values.number("gap_coefficient").unwrap_or(UNREAD),
             at: values.two("at"),
+            wind_pressure: 0.0,
+            area: 0.0,
+            exchange_factor: 1.0,
+            pane: None,
         };
         self.opening_fits(values, &opening, rooms);
         opening
@@ -173,6 +177,7 @@ impl Resolver<'_> {
             (None, OpeningKind::Window) => "window",
             (None, OpeningKind::Door) if outside => "front door",
             (None, OpeningKind::Door) => "interior door",
+            (None, OpeningKind::Hatch | OpeningKind::Stair | OpeningKind::Division) => "none",
         };
         catalogue().gap(name).unwrap_or(0.0)
     }
@@ -308,6 +313,10 @@ impl Resolver<'_> {
                     gap_area: values.number("area").unwrap_or(0.0) * room.floor_area() / floor,
                     gap_coefficient: values.number("coefficient").unwrap_or(UNREAD),
                     at: None,
+                    wind_pressure: 0.0,
+                    area: 0.0,
+                    exchange_factor: 1.0,
+                    pane: None,
                 });
             }
         }
