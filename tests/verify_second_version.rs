@@ -1,5 +1,6 @@
 //! The single-room model against a second version of it, written in Python
 //! from docs/method.md alone (`tests/reference/second_version/`).
+#![allow(clippy::unwrap_used)]
 
 mod common;
 
