@@ -1,6 +1,8 @@
 //! Bad scenario files: every fault at once, with its place and what would be
 //! right. One file per kind of fault under `tests/bad/`.
 
+#![allow(clippy::unwrap_used)]
+
 use doorglow::scenario;
 
 macro_rules! bad {

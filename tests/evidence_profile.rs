@@ -10,6 +10,8 @@
 //! two integrals of Janssens and Tran 1992, whose interface lies 0.2-0.4 m
 //! below the steep part of the open-door arrays.
 
+#![allow(clippy::unwrap_used, clippy::print_stdout, clippy::unnecessary_wraps)]
+
 use doorglow::exposure::profile::{between, upper_share};
 
 /// Heights of the thermocouples, m.

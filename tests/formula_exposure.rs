@@ -5,8 +5,8 @@
 mod support;
 
 use doorglow::exposure::flux::{from_layer, view_factor_below};
+use doorglow::exposure::observe;
 use doorglow::exposure::profile::{between, fitting_thickness, upper_share};
-use doorglow::exposure::{observe, visibility};
 use doorglow::record::{Quantity, Subject};
 use proptest::prelude::*;
 
@@ -52,17 +52,6 @@ fn formula_layer_radiation_is_that_of_a_black_body() {
     let net = from_layer(1.0, 873.15, 300.0) - surroundings;
     assert!((net / 32.5e3 - 1.0).abs() < 2e-3, "{net}");
     assert!((from_layer(0.0, 873.15, 293.15) - surroundings).abs() < 1e-9);
-}
-
-#[test]
-fn formula_visibility_three_over_extinction() {
-    // Soot 0.05, 0.1, 0.5, 1 g/m3: 6.9, 3.4, 0.7, 0.35 m.
-    for (soot, metres) in [(5e-5, 6.9), (1e-4, 3.45), (5e-4, 0.69), (1e-3, 0.345)] {
-        assert!((visibility(soot) / metres - 1.0).abs() < 0.01);
-    }
-    assert_eq!(visibility(0.0), 30.0);
-    assert_eq!(visibility(-1e-9), 30.0);
-    assert!(visibility(f64::NAN).is_nan());
 }
 
 #[test]

@@ -1,6 +1,8 @@
 //! The scenario reader: shipped scenarios, round trip, reference page, and
 //! that no text makes it panic.
 
+#![allow(clippy::unwrap_used)]
+
 use doorglow::plan::{Burning, Curve, OpeningKind, Plan, Space};
 use doorglow::scenario;
 use proptest::prelude::*;
@@ -276,11 +278,27 @@ fn verify_hash_is_sha_256() {
     );
 }
 
-/// Reads and renders; neither may panic.
+/// An item that overrides a yield of a fuel whose formula is odd.
+#[test]
+fn regress_item_over_an_odd_fuel() {
+    let odd = EVERYTHING.replace("[fuel.sofa]", "[fuel.sofa]\noxygen = 0.14");
+    let loaded = scenario::load_with_cautions("odd.toml", &odd, None).unwrap();
+    assert!(!loaded.cautions.faults.is_empty());
+}
+
+/// Reads and renders; neither may panic, and what is read can be written and
+/// read again.
 fn read(text: &str) {
-    if let Err(report) = scenario::load("fuzz.toml", text, None) {
-        assert!(report.errors().next().is_some());
-        assert!(!report.render(false, 60).is_empty());
+    match scenario::load("fuzz.toml", text, None) {
+        Ok(plan) => {
+            let again = load(&scenario::resolved_text(&plan), None);
+            assert_eq!(format!("{plan:#?}"), format!("{again:#?}"));
+            assert!(!scenario::building_text(&plan).is_empty());
+        }
+        Err(report) => {
+            assert!(report.errors().next().is_some());
+            assert!(!report.render(false, 60).is_empty());
+        }
     }
 }
 

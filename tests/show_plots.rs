@@ -1,5 +1,7 @@
 //! Plots of an invented record: what they say, not megabytes of how.
 
+#![allow(clippy::unwrap_used)]
+
 mod invented;
 
 use doorglow::show::{CAUTION, plots};
@@ -24,11 +26,11 @@ fn words(svg: &str) -> Vec<String> {
 
 #[test]
 fn regress_plots_say_what_they_show() {
-    let mut all = String::new();
-    for (name, svg) in drawn() {
-        all.push_str(&format!("{name}\n  {}\n", words(&svg).join("\n  ")));
-    }
-    insta::assert_snapshot!(all);
+    let all: Vec<String> = drawn()
+        .iter()
+        .map(|(name, svg)| format!("{name}\n  {}", words(svg).join("\n  ")))
+        .collect();
+    insta::assert_snapshot!(all.join("\n"));
 }
 
 #[test]

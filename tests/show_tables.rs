@@ -1,5 +1,7 @@
 //! Tables and files of an invented record.
 
+#![allow(clippy::unwrap_used)]
+
 mod invented;
 
 use doorglow::record::{Ended, Quantity, Subject};

@@ -159,6 +159,7 @@ fn numbers_json(rows: &[NumberRow]) -> Vec<Value> {
 }
 
 #[cfg(test)]
+#[allow(clippy::unwrap_used)]
 mod tests {
     use super::*;
 

@@ -147,6 +147,7 @@ pub fn catalogue() -> &'static Catalogue {
 }
 
 #[cfg(test)]
+#[allow(clippy::unwrap_used)]
 mod tests {
     use super::*;
     use crate::units::{self, Dimension};

@@ -7,34 +7,12 @@
 pub mod flux;
 pub mod profile;
 
+use crate::physics::visibility::{REFLECTING, visibility};
 use crate::plan::{Plan, Station};
 use crate::record::{Column, Quantity, Record, Subject};
 
-/// Mass-specific extinction of flaming smoke in visible light, m2/kg:
-/// 8.7 m2/g, Mulholland and Croarkin 2000 (from memory), +-13 %.
-pub const SMOKE_EXTINCTION: f64 = 8700.0;
-
-/// Extinction coefficient times distance at which a reflecting object is lost:
-/// 3, Jin 1970 (from memory).
-pub const REFLECTING_FACTOR: f64 = 3.0;
-
 /// Largest visibility that is reported, m. Jin's tests did not go further.
 pub const FARTHEST_VISIBILITY: f64 = 30.0;
-
-/// Distance at which a reflecting object is lost, m, `S = 3 / (8700 rho)` for
-/// soot density `rho` in kg/m3 (0 or more), at most 30 m. Negative densities
-/// count as none; not-a-number stays so.
-pub fn visibility(soot_density: f64) -> f64 {
-    if soot_density.is_nan() {
-        return f64::NAN;
-    }
-    let extinction = SMOKE_EXTINCTION * soot_density;
-    if extinction * FARTHEST_VISIBILITY <= REFLECTING_FACTOR {
-        FARTHEST_VISIBILITY
-    } else {
-        REFLECTING_FACTOR / extinction
-    }
-}
 
 /// Appends the columns of every station of the plan to the record. Columns of
 /// stations that are already there are replaced, so that it may be called
@@ -91,10 +69,19 @@ fn station_columns(record: &Record, plan: &Plan, station: &Station) -> Vec<(Quan
         ),
         (
             Quantity::StationVisibility,
-            soot.into_iter().map(visibility).collect(),
+            soot.into_iter().map(seen).collect(),
         ),
         (Quantity::StationFlux, fluxes(record, plan, station)),
     ]
+}
+
+/// Distance at which a reflecting object is lost, m, for soot in kg/m3.
+fn seen(soot: f64) -> f64 {
+    if soot.is_nan() {
+        f64::NAN
+    } else {
+        visibility(REFLECTING, soot, FARTHEST_VISIBILITY)
+    }
 }
 
 /// Share of upper-layer gas at the station's head at every output time.

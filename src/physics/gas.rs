@@ -39,26 +39,37 @@ pub const SOOT: usize = 5;
 pub const FIRST_FUEL: usize = 6;
 
 /// Molar masses of the fixed species, kg/mol (IUPAC 2021 atomic masses).
+///
+/// Nitrogen stands for that of the air, with its 1.182 % of argon by moles;
+/// pure N2 in its place would make air 0.4 % too light and its heat capacity
+/// 0.5 % too high. The little nitrogen that fuels set free is taken for the
+/// same.
 pub const MOLAR_MASS: [f64; FIRST_FUEL] = [
-    28.014e-3, 31.998e-3, 44.009e-3, 18.015e-3, 28.010e-3, 12.011e-3,
+    28.155_1e-3,
+    31.998e-3,
+    44.009e-3,
+    18.015e-3,
+    28.010e-3,
+    12.011e-3,
 ];
 
-/// `a0..a4` below and above 1000 K, in the order of the species indices.
+/// `a0..a4` below and above 1000 K, in the order of the species indices; those
+/// of nitrogen mixed with argon's 2.5.
 const POLYNOMIALS: [[[f64; 5]; 2]; FIRST_FUEL] = [
     [
         [
-            3.298_677,
-            1.408_240_4e-3,
-            -3.963_222e-6,
-            5.641_515e-9,
-            -2.444_854e-12,
+            3.289_236_56,
+            1.391_594_87e-3,
+            -3.916_376_35e-6,
+            5.574_831_78e-9,
+            -2.415_955_60e-12,
         ],
         [
-            2.926_64,
-            1.487_976_8e-3,
-            -5.684_76e-7,
-            1.009_703_8e-10,
-            -6.753_351e-15,
+            2.921_597_08,
+            1.470_388_78e-3,
+            -5.617_565_62e-7,
+            9.977_690_09e-11,
+            -6.673_525_77e-15,
         ],
     ],
     [

@@ -2,6 +2,7 @@
 
 use super::moment::{Kind, Moment, Weight, spoken};
 use super::reader::{Played, Reader};
+use crate::plan::Space;
 use crate::record::{Dimension, Ended, Quantity, Subject};
 
 /// All actions that were played.
@@ -22,16 +23,24 @@ fn action(reader: &Reader<'_>, played: &Played<'_>) -> Moment {
         .with("clear width", played.action.clear_width, Dimension::Length)
         .with("heat burned", reader.burned().at(time), Dimension::Power)
         .weighing(Weight::Headline);
-    let Some(item) = reader.main_item() else {
-        return moment;
+    let moment = match reader.main_item() {
+        Some(item) => at_the_fire(reader, moment, item),
+        None => moment,
     };
+    at_stations(reader, moment, played)
+}
+
+/// Adds what the fire breathes and the layer over it.
+fn at_the_fire(reader: &Reader<'_>, moment: Moment, item: usize) -> Moment {
+    let time = moment.time;
     let base = reader.history(Subject::Item(item), Quantity::BaseOxygen);
     let room = reader.plan.items.get(item).map_or(0, |item| item.room.0);
     let layer = reader.history(Subject::Room(room), Quantity::UpperTemperature);
+    let oxygen = base.at(time);
     moment
         .with(
             "oxygen at the flame base",
-            base.at(time),
+            oxygen,
             Dimension::VolumeFraction,
         )
         .with(
@@ -39,6 +48,30 @@ fn action(reader: &Reader<'_>, played: &Played<'_>) -> Moment {
             layer.at(time),
             Dimension::Temperature,
         )
+}
+
+/// Adds what people at the opening meet when it is changed.
+fn at_stations(reader: &Reader<'_>, mut moment: Moment, played: &Played<'_>) -> Moment {
+    let Some(opening) = reader.plan.openings.get(played.action.opening.0) else {
+        return moment;
+    };
+    let sides = [opening.from, opening.to];
+    for (index, station) in reader.plan.stations.iter().enumerate() {
+        if !sides.contains(&Space::Room(station.room)) {
+            continue;
+        }
+        let name = spoken(&station.name);
+        for (quantity, what) in [
+            (Quantity::StationTemperature, "temperature"),
+            (Quantity::StationVisibility, "visibility"),
+        ] {
+            let value = reader
+                .history(Subject::Station(index), quantity)
+                .at(moment.time);
+            moment = moment.with(format!("{what} at {name}"), value, quantity.dimension());
+        }
+    }
+    moment
 }
 
 /// The action in words: what becomes of the opening, and why.
@@ -53,8 +86,8 @@ fn words(reader: &Reader<'_>, played: &Played<'_>) -> String {
         other => format!("held at {other}"),
     };
     match &action.because {
-        Some(because) => format!("{name} {what}: {because}"),
-        None => format!("{name} {what}"),
+        Some(because) => format!("{}: {name} {what}; {because}", spoken(&action.name)),
+        None => format!("{}: {name} {what}", spoken(&action.name)),
     }
 }
 

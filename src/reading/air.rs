@@ -3,33 +3,26 @@
 
 use std::collections::VecDeque;
 
+use super::fire::burned_out_at;
 use super::moment::{Kind, Moment, spoken};
 use super::reader::{Played, Reader};
+use crate::physics::cold_front;
 use crate::plan::{OpeningKind, Plan, Space};
 use crate::record::{Dimension, Quantity, Subject};
-
-/// Froude number of a gravity current through a door: 0.35 (0.32 slot, 0.44
-/// fully open end; Fleischmann 1994, from memory).
-const FROUDE: f64 = 0.35;
-
-/// Acceleration of gravity, m/s2 (standard).
-const GRAVITY: f64 = 9.806_65;
 
 /// Rise of the oxygen at the flame base at which the fire feels the air:
 /// one percentage point \[choice\]. Half of the way to the later maximum would
 /// wait for the fire to burn out.
 const FELT_RISE: f64 = 0.01;
 
-/// Speed of the front of cold air under hot gas, m/s,
-/// `v = 0.35 sqrt(beta g h)` with `beta = T_hot / T_cold - 1`, room height `h`
-/// in m, temperatures in K. Nothing where the gas is not warmer.
-pub fn front_speed(cold: f64, hot: f64, height: f64) -> f64 {
-    let beta = hot / cold - 1.0;
-    if beta > 0.0 && height > 0.0 {
-        FROUDE * (beta * GRAVITY * height).sqrt()
-    } else {
-        0.0
-    }
+/// Speed of the front in a room, m/s: the gas's own temperature (K) against the
+/// open air's. Densities go as 1/T; only their ratio counts.
+fn front_speed(kind: OpeningKind, cold: f64, gas: f64, height: f64) -> f64 {
+    let froude = match kind {
+        OpeningKind::Door => cold_front::FROUDE_DOOR,
+        OpeningKind::Window | OpeningKind::Gap => cold_front::FROUDE_SLOT,
+    };
+    cold_front::speed(froude, 1.0 / cold, 1.0 / gas, height)
 }
 
 /// Both moments for every action that opens a way in for cold air.
@@ -38,13 +31,15 @@ pub(super) fn moments(reader: &Reader<'_>) -> Vec<Moment> {
         return Vec::new();
     };
     let mut out = Vec::new();
+    let lit = reader
+        .plan
+        .items
+        .get(item)
+        .map_or(f64::INFINITY, |item| item.ignition);
+    let gone = burned_out_at(reader, item).unwrap_or(f64::INFINITY);
     for (number, played) in reader.played.iter().enumerate() {
-        let burning = reader
-            .plan
-            .items
-            .get(item)
-            .map_or(f64::INFINITY, |i| i.ignition);
-        if !played.opens() || played.action.time < burning {
+        let opened = played.action.time;
+        if !played.opens() || opened < lit || opened > gone {
             continue;
         }
         let next = reader
@@ -74,8 +69,8 @@ fn front(reader: &Reader<'_>, item: usize, number: usize, played: &Played<'_>) -
             .history(Subject::Room(room), Quantity::MeanTemperature)
             .at(opened);
         let height = plan.rooms.get(room)?.height;
-        let speed = front_speed(plan.open_air.temperature, gas, height);
-        if !(speed > 0.0) {
+        let speed = front_speed(opening.kind, plan.open_air.temperature, gas, height);
+        if speed <= 0.0 || speed.is_nan() {
             return None;
         }
         let entry = if step == 0 {
@@ -217,26 +212,4 @@ fn crossing_length(
         (Some([x0, y0]), Some([x1, y1])) => (x1 - x0).hypot(y1 - y0),
         _ => default,
     })
-}
-
-#[cfg(test)]
-mod tests {
-    use super::front_speed;
-
-    #[test]
-    fn formula_front_speed_lies_in_its_published_range() {
-        // h 2.4 m, cold 20 °C; gas 120, 200, 400, 600 °C: ranges for Froude
-        // numbers 0.32 to 0.44.
-        for (gas, low, high) in [
-            (120.0, 0.9, 1.25),
-            (200.0, 1.2, 1.7),
-            (400.0, 1.8, 2.4),
-            (600.0, 2.2, 3.0),
-        ] {
-            let speed = front_speed(293.15, gas + 273.15, 2.4);
-            assert!((low..high).contains(&speed), "{gas} °C: {speed} m/s");
-        }
-        assert_eq!(front_speed(293.0, 280.0, 2.4), 0.0);
-        assert_eq!(front_speed(293.0, f64::NAN, 2.4), 0.0);
-    }
 }

@@ -143,7 +143,7 @@ fn peaks(reader: &Reader<'_>) -> Vec<Moment> {
             let text = if number == 0 {
                 "most heat burned before anything is changed"
             } else {
-                "most heat burned since then"
+                "most heat burned after that"
             };
             let text = if reader.played.is_empty() {
                 "most heat burned"
@@ -173,7 +173,7 @@ pub(super) fn starved_level(reader: &Reader<'_>, opening: f64) -> Option<f64> {
 
 /// Back above three times the starved level, once after each opening on a
 /// fire short of air.
-fn back_up(reader: &Reader<'_>) -> Vec<Moment> {
+pub(super) fn back_up(reader: &Reader<'_>) -> Vec<Moment> {
     let openings: Vec<_> = reader.played.iter().filter(|p| p.opens()).collect();
     let mut out = Vec::new();
     for (number, opening) in openings.iter().enumerate() {
@@ -208,22 +208,28 @@ fn burned_out(reader: &Reader<'_>) -> Vec<Moment> {
     let mut out = Vec::new();
     for (index, item) in reader.plan.items.iter().enumerate() {
         let subject = Subject::Item(index);
-        let left = reader.history(subject, Quantity::FuelLeft);
-        let rate = reader.history(subject, Quantity::FreeRate);
-        let time = match item.burning {
-            Burning::Growing(_) => fuel_gone(reader, left),
-            Burning::AsGiven(_) | Burning::Burner { .. } => rate_ended(reader, rate),
-        };
-        if let Some(time) = time {
+        if let Some(time) = burned_out_at(reader, index) {
+            let left = reader.history(subject, Quantity::FuelLeft).at(time);
             let text = format!("{} is burned out", spoken(&item.name));
             out.push(reader.moment(time, Kind::BurnedOut, subject, text).with(
                 "fuel left",
-                left.at(time),
+                left,
                 Dimension::Mass,
             ));
         }
     }
     out
+}
+
+/// When an item is burned out, s.
+pub(super) fn burned_out_at(reader: &Reader<'_>, item: usize) -> Option<f64> {
+    let subject = Subject::Item(item);
+    match reader.plan.items.get(item)?.burning {
+        Burning::Growing(_) => fuel_gone(reader, reader.history(subject, Quantity::FuelLeft)),
+        Burning::AsGiven(_) | Burning::Burner { .. } => {
+            rate_ended(reader, reader.history(subject, Quantity::FreeRate))
+        }
+    }
 }
 
 /// Time at which the fuel left falls below its share of what there was.

@@ -17,12 +17,11 @@ mod rooms;
 mod stations;
 mod summary;
 
-pub use air::front_speed;
 pub use flashover::{Answer, Flashover};
 pub use moment::{Band, Kind, Moment, Number, Since, Weight, spoken};
 pub use summary::{
-    Closures, Extreme, FirstOpening, LimitSummary, RoomSummary, StationSummary, Stretch, Summary,
-    Worst,
+    Closures, Comeback, Extreme, FirstOpening, LimitSummary, RoomSummary, StationSummary, Stretch,
+    Summary, Worst,
 };
 
 use crate::plan::Plan;

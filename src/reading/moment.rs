@@ -1,5 +1,7 @@
 //! One entry of the timeline.
 
+use std::borrow::Cow;
+
 use serde::Serialize;
 
 use crate::record::{Dimension, Subject};
@@ -45,7 +47,7 @@ kinds! {
     LayerAt600, "layer_at_600", "The upper layer of a room reaches 600 °C.";
     FloorFlux, "floor_flux", "The radiant flux on the floor of a room reaches 20 kW/m2.";
     Flashover, "flashover", "Both criteria of flashover hold in a room: 600 °C in the layer and 20 kW/m2 on the floor.";
-    SmokeAtHead, "smoke_at_head", "The smoke level comes down to head height at a station.";
+    SmokeAtHead, "smoke_at_head", "The smoke level comes down to head height at a station. A layer that has all but vanished moves its level fast: judge by temperature, oxygen and visibility.";
     Attention, "attention_temperature", "The gas at a station's head height reaches the attention temperature.";
     Out, "out_temperature", "The gas at a station's head height reaches the temperature at which people in training are to be out.";
     LowOxygen, "low_oxygen", "The oxygen at a station's head height falls to its limit.";
@@ -68,10 +70,10 @@ pub enum Weight {
 }
 
 /// A number behind a moment.
-#[derive(Debug, Clone, Copy, PartialEq, Serialize)]
+#[derive(Debug, Clone, PartialEq, Serialize)]
 pub struct Number {
     /// In plain words.
-    pub label: &'static str,
+    pub label: Cow<'static, str>,
     /// Value, SI.
     pub value: f64,
     /// Dimension, which sets the unit.

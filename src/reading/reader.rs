@@ -1,6 +1,8 @@
 //! What every reading needs: the record with its plan, the fire as one, and
 //! the actions that cut the run into stages.
 
+use std::borrow::Cow;
+
 use super::history::{History, Side, Spell};
 use super::moment::{Band, Kind, Moment, Number, Since, Weight, spoken};
 use crate::plan::{Action, OpeningKind, Plan, Space};
@@ -233,10 +235,15 @@ impl<'a> Reader<'a> {
 
 impl Moment {
     /// Adds a number, unless it is none.
-    pub(super) fn with(mut self, label: &'static str, value: f64, dimension: Dimension) -> Self {
+    pub(super) fn with(
+        mut self,
+        label: impl Into<Cow<'static, str>>,
+        value: f64,
+        dimension: Dimension,
+    ) -> Self {
         if value.is_finite() {
             self.numbers.push(Number {
-                label,
+                label: label.into(),
                 value,
                 dimension,
             });
@@ -247,8 +254,7 @@ impl Moment {
     /// Adds until when a spell lasts, and how often it comes back.
     pub(super) fn with_spell(mut self, spell: Spell) -> Self {
         if spell.times > 1 {
-            self.text
-                .push_str(&format!(", back and forth {} times", spell.times));
+            self.text = format!("{}, back and forth {} times", self.text, spell.times);
         }
         match spell.end {
             Some(end) => self.with("until", end, Dimension::Time),

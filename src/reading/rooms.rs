@@ -18,15 +18,27 @@ const LAYER_600: f64 = 600.0 + ZERO_CELSIUS;
 /// practice; doors are hard to open from about 80 Pa on.
 const HIGH_PRESSURE: f64 = 500.0;
 
+/// A criterion this close to the flashover that it completes is said with it,
+/// s \[choice\].
+const SAME_TIME: f64 = 1.0;
+
 /// All moments of the rooms.
 pub(super) fn moments(reader: &Reader<'_>) -> Vec<Moment> {
     let mut out = Vec::new();
     for room in 0..reader.plan.rooms.len() {
         out.extend(smoke_at_door_head(reader, room));
-        out.extend(layer(reader, room, Kind::LayerAt500, LAYER_500));
-        out.extend(layer(reader, room, Kind::LayerAt600, LAYER_600));
-        out.extend(floor_flux(reader, room));
-        out.extend(flashovers(reader, room));
+        let flashovers = flashovers(reader, room);
+        let mut criteria = layer(reader, room, Kind::LayerAt500, LAYER_500);
+        criteria.extend(layer(reader, room, Kind::LayerAt600, LAYER_600));
+        criteria.extend(floor_flux(reader, room));
+        for moment in &mut criteria {
+            let said = |flashover: &Moment| (flashover.time - moment.time).abs() < SAME_TIME;
+            if flashovers.iter().any(said) {
+                moment.weight = Weight::Detail;
+            }
+        }
+        out.extend(criteria);
+        out.extend(flashovers);
     }
     out.extend(high_pressure(reader));
     out
@@ -61,18 +73,17 @@ fn smoke_at_door_head(reader: &Reader<'_>, room: usize) -> Option<Moment> {
 fn layer(reader: &Reader<'_>, room: usize, kind: Kind, temperature: f64) -> Vec<Moment> {
     let subject = Subject::Room(room);
     let history = reader.history(subject, Quantity::UpperTemperature);
-    let name = reader.room_name(room);
+    let what = match kind {
+        Kind::LayerAt500 => "smoke layer near flashover",
+        _ => "smoke layer at flashover",
+    };
+    let text = format!("{}: {what}", reader.room_name(room));
     reader
         .by_stage(history, Side::Above, temperature)
         .into_iter()
         .map(|spell| {
             reader
-                .moment(
-                    spell.start,
-                    kind,
-                    subject,
-                    format!("{name}: hot smoke layer"),
-                )
+                .moment(spell.start, kind, subject, text.clone())
                 .with("smoke layer", temperature, Dimension::Temperature)
                 .with(
                     "smoke level",

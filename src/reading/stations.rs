@@ -32,7 +32,7 @@ pub(super) fn limits(station: &Station) -> [Limit; 4] {
             quantity: Quantity::StationVisibility,
             value: limits.visibility,
             side: Side::Below,
-            words: "visibility down to its limit",
+            words: "visibility at its limit",
             weight: Weight::Plain,
         },
         Limit {
@@ -40,7 +40,7 @@ pub(super) fn limits(station: &Station) -> [Limit; 4] {
             quantity: Quantity::StationTemperature,
             value: limits.attention_temperature,
             side: Side::Above,
-            words: "temperature that calls for attention",
+            words: "temperature at the limit 'attention'",
             weight: Weight::Plain,
         },
         Limit {
@@ -48,7 +48,7 @@ pub(super) fn limits(station: &Station) -> [Limit; 4] {
             quantity: Quantity::StationTemperature,
             value: limits.out_temperature,
             side: Side::Above,
-            words: "temperature at which people are to be out",
+            words: "temperature at the limit 'out'",
             weight: Weight::Headline,
         },
         Limit {
@@ -56,7 +56,7 @@ pub(super) fn limits(station: &Station) -> [Limit; 4] {
             quantity: Quantity::StationOxygen,
             value: limits.oxygen,
             side: Side::Below,
-            words: "oxygen down to its limit",
+            words: "oxygen at its limit",
             weight: Weight::Plain,
         },
     ]
@@ -77,7 +77,11 @@ pub(super) fn moments(reader: &Reader<'_>) -> Vec<Moment> {
 /// Station in words: name, room, posture.
 fn place(reader: &Reader<'_>, station: &Station) -> String {
     let room = reader.room_name(station.room.0);
-    format!("{} ({room}, {})", spoken(&station.name), station.posture)
+    format!(
+        "station {} ({room}, {})",
+        spoken(&station.name),
+        station.posture
+    )
 }
 
 fn reached(reader: &Reader<'_>, index: usize, station: &Station, limit: Limit) -> Vec<Moment> {
@@ -109,7 +113,8 @@ fn smoke_at_head(reader: &Reader<'_>, index: usize, station: &Station) -> Vec<Mo
     reader
         .by_stage(level, Side::Below, station.height)
         .into_iter()
-        .map(|spell| {
+        .enumerate()
+        .map(|(number, spell)| {
             let text = format!("{place}: smoke down to head height");
             reader
                 .moment(
@@ -120,7 +125,11 @@ fn smoke_at_head(reader: &Reader<'_>, index: usize, station: &Station) -> Vec<Mo
                 )
                 .with("smoke level", station.height, Dimension::Length)
                 .with_spell(spell)
-                .within(reader.band(spell.start))
+                .weighing(if number == 0 {
+                    Weight::Plain
+                } else {
+                    Weight::Detail
+                })
         })
         .collect()
 }

@@ -2,13 +2,19 @@
 
 use serde::Serialize;
 
-use super::fire::SHORT_OF_AIR;
+use super::fire::{self, SHORT_OF_AIR};
 use super::flashover::{self, Flashover};
-use super::history::{History, Side};
-use super::moment::Kind;
+use super::history::Side;
+use super::moment::{Band, Kind};
 use super::reader::Reader;
 use super::stations;
 use crate::record::{Closure, Dimension, Ended, Quantity, Subject};
+
+/// Rise of the layer temperature from which it counts, K \[choice\].
+const WARMED: f64 = 10.0;
+
+/// Share of the height below which a smoke level counts \[choice\].
+const FILLED: f64 = 0.95;
 
 /// A value and when it occurs.
 #[derive(Debug, Clone, Copy, PartialEq, Serialize)]
@@ -33,6 +39,9 @@ pub struct Stretch {
 pub struct RoomSummary {
     /// Name in the scenario.
     pub name: String,
+    /// False when no warm smoke layer worth the name forms: never below 95 % of
+    /// the height, or never 10 K warmer than at the start \[choice\].
+    pub hot_layer: bool,
     /// Hottest upper layer, K.
     pub hottest_layer: Option<Extreme>,
     /// Lowest smoke level, m above the floor.
@@ -59,6 +68,8 @@ pub struct LimitSummary {
     /// First time at or after the first opening, s; the opening's own time
     /// when it was reached before and still is.
     pub first_after_opening: Option<f64>,
+    /// Earliest and latest to expect of that, unless it was so at the opening.
+    pub band: Option<Band>,
 }
 
 /// The worst value of a quantity at a station.
@@ -96,6 +107,21 @@ pub struct FirstOpening {
     pub time: f64,
 }
 
+/// What the fire does after the first opening.
+#[derive(Debug, Clone, Copy, PartialEq, Serialize)]
+#[serde(rename_all = "snake_case")]
+pub enum Comeback {
+    /// It was short of air and comes back above three times its starved level.
+    At {
+        /// When, s.
+        time: f64,
+        /// Earliest and latest to expect.
+        band: Option<Band>,
+    },
+    /// It was short of air and does not come back within the run.
+    NotInTheModel,
+}
+
 /// Relative closures of the ledger.
 #[derive(Debug, Clone, Copy, PartialEq, Serialize)]
 pub struct Closures {
@@ -123,6 +149,9 @@ pub struct Summary {
     pub peak_before: Option<Extreme>,
     /// Lowest heat burned between that peak and the first opening, W.
     pub lowest_before: Option<Extreme>,
+    /// Whether the fire comes back; `None` without an opening on a fire short
+    /// of air.
+    pub comeback: Option<Comeback>,
     /// Highest heat burned from the first opening on, W.
     pub peak_after: Option<Extreme>,
     /// What the incoming air could burn when it burned most after the opening, W.
@@ -161,6 +190,7 @@ pub(super) fn read(reader: &Reader<'_>) -> Summary {
         lowest_before: opened
             .zip(peak_before)
             .and_then(|(opened, peak)| extreme(burned.smallest(peak.time, opened))),
+        comeback: opened.and_then(|opened| comeback(reader, opened)),
         peak_after,
         air_could_burn_at_peak: peak_after
             .map(|peak| air.at(peak.time))
@@ -203,6 +233,17 @@ fn first_opening(reader: &Reader<'_>) -> Option<FirstOpening> {
         })
 }
 
+/// Whether a fire that was short of air at the first opening comes back after
+/// that one or a later one.
+fn comeback(reader: &Reader<'_>, opened: f64) -> Option<Comeback> {
+    fire::starved_level(reader, opened)?;
+    let back = fire::back_up(reader).into_iter().next();
+    Some(back.map_or(Comeback::NotInTheModel, |moment| Comeback::At {
+        time: moment.time,
+        band: moment.band,
+    }))
+}
+
 fn lowest_base_oxygen(reader: &Reader<'_>) -> Option<Extreme> {
     let item = reader.main_item()?;
     let base = reader.history(Subject::Item(item), Quantity::BaseOxygen);
@@ -238,14 +279,24 @@ fn room_summary(reader: &Reader<'_>, room: usize, opened: Option<f64>) -> RoomSu
     let subject = Subject::Room(room);
     let layer = reader.history(subject, Quantity::UpperTemperature);
     let level = reader.history(subject, Quantity::Interface);
+    let lowest = level.smallest(0.0, reader.end);
+    let hottest = layer.largest(0.0, reader.end);
+    let plan_room = reader.plan.rooms.get(room);
+    let filled = lowest
+        .zip(plan_room)
+        .is_none_or(|((_, lowest), room)| lowest < FILLED * room.height);
+    let warmed = hottest
+        .zip(plan_room)
+        .is_none_or(|((_, hottest), room)| hottest > room.temperature + WARMED);
     RoomSummary {
+        hot_layer: filled && warmed,
         name: reader
             .plan
             .rooms
             .get(room)
             .map_or_else(String::new, |r| r.name.clone()),
-        hottest_layer: extreme(layer.largest(0.0, reader.end)),
-        lowest_smoke_level: extreme(level.smallest(0.0, reader.end)),
+        hottest_layer: extreme(hottest),
+        lowest_smoke_level: extreme(lowest),
         flashover_before: flashover::read(reader, room, 0.0, opened.unwrap_or(reader.end)),
         flashover_after: opened
             .and_then(|opened| flashover::read(reader, room, opened, reader.end)),
@@ -287,16 +338,18 @@ fn station_summary(
         worst: worst.collect(),
         limits: stations::limits(station)
             .into_iter()
-            .map(|limit| limit_summary(reader.history(subject, limit.quantity), limit, opened))
+            .map(|limit| limit_summary(reader, subject, limit, opened))
             .collect(),
     })
 }
 
 fn limit_summary(
-    history: History<'_>,
+    reader: &Reader<'_>,
+    subject: Subject,
     limit: stations::Limit,
     opened: Option<f64>,
 ) -> LimitSummary {
+    let history = reader.history(subject, limit.quantity);
     let spells = history.spells(limit.side, limit.value);
     let after = |opened: f64| {
         spells
@@ -304,12 +357,14 @@ fn limit_summary(
             .find(|spell| spell.end.is_none_or(|end| end > opened))
             .map(|spell| spell.start.max(opened))
     };
+    let first_after_opening = opened.and_then(after);
     LimitSummary {
         kind: limit.kind,
         words: limit.words,
         limit: limit.value,
         dimension: limit.quantity.dimension(),
         first: spells.first().map(|spell| spell.start),
-        first_after_opening: opened.and_then(after),
+        first_after_opening,
+        band: first_after_opening.and_then(|time| reader.band(time)),
     }
 }

@@ -70,6 +70,7 @@ pub(super) fn time_of_heat(alpha: f64, peak: f64, heat: f64) -> f64 {
 }
 
 #[cfg(test)]
+#[allow(clippy::unwrap_used)]
 mod tests {
     use super::*;
     use crate::catalogue::catalogue;

@@ -91,7 +91,7 @@ pub fn text_from_bytes(file_name: &str, bytes: Vec<u8>) -> Result<String, Report
     String::from_utf8(bytes).map_err(|error| {
         let good = error.utf8_error().valid_up_to();
         let bytes = error.as_bytes();
-        let line = 1 + bytes[..good].iter().filter(|byte| **byte == b'\n').count();
+        let line = bytes[..good].split(|byte| *byte == b'\n').count();
         let fault = Fault::elsewhere(
             code::SYNTAX,
             format!("{file_name} is not UTF-8 text: line {line} has a byte that cannot be read"),

@@ -20,32 +20,28 @@ pub const SCHEMA_VERSION: u32 = 1;
 /// # Errors
 /// When a value cannot be written as JSON.
 pub fn record_json(record: &Record, plan: &Plan, scenario_hash: &str) -> Result<Vec<u8>, Error> {
-    let mut text = String::from("{\n");
+    let mut lines = vec!["{".to_owned()];
     for (name, value) in head(record, plan, scenario_hash)? {
-        text.push_str(&format!("{}: {value},\n", Value::from(name)));
+        lines.push(format!("{}: {value},", Value::from(name)));
     }
-    text.push_str(&format!(
-        "\"time\": {},\n\"columns\": [\n",
-        serde_json::to_string(&Times {
-            unit: "s",
-            values: &record.time
-        })?
-    ));
+    let times = Times {
+        unit: "s",
+        values: &record.time,
+    };
+    lines.push(format!("\"time\": {},", serde_json::to_string(&times)?));
+    lines.push("\"columns\": [".to_owned());
     for (index, column) in record.columns.iter().enumerate() {
-        let comma = if index + 1 == record.columns.len() {
-            ""
-        } else {
-            ","
-        };
-        let line = serde_json::to_string(&History::of(record, plan, column))?;
-        text.push_str(&format!("{line}{comma}\n"));
+        let is_last = index + 1 == record.columns.len();
+        let comma = if is_last { "" } else { "," };
+        let history = serde_json::to_string(&History::of(record, plan, column))?;
+        lines.push(format!("{history}{comma}"));
     }
-    text.push_str("]\n}\n");
-    Ok(text.into_bytes())
+    lines.push("]\n}\n".to_owned());
+    Ok(lines.join("\n").into_bytes())
 }
 
 /// How the run ended, for machines.
-pub(crate) fn ended_json(ended: &Ended) -> Value {
+fn ended_json(ended: &Ended) -> Value {
     match ended {
         Ended::Completed => json!({ "how": "completed" }),
         Ended::Interrupted(time) => json!({ "how": "stopped by the user", "time": time }),

@@ -283,6 +283,7 @@ pub const UNITS: &[Unit] = &[
 ];
 
 #[cfg(test)]
+#[allow(clippy::unwrap_used)]
 mod tests {
     use super::*;
 

@@ -279,13 +279,15 @@ pub fn rounded(si: f64, dimension: Dimension) -> String {
         let magnitude = value.abs().log10().floor() as i32;
         usize::try_from((3 - magnitude).clamp(0, 12)).unwrap_or(0)
     };
-    let mut text = format!("{value:.places$}");
-    if text.contains('.') {
-        text = text.trim_end_matches('0').trim_end_matches('.').to_owned();
-    }
+    let full = format!("{value:.places$}");
+    let text = if full.contains('.') {
+        full.trim_end_matches('0').trim_end_matches('.')
+    } else {
+        &full
+    };
     match unit {
         Some(unit) => format!("{text} {}", unit.symbol),
-        None => text,
+        None => text.to_owned(),
     }
 }
 
@@ -304,6 +306,7 @@ fn number(value: f64) -> String {
 }
 
 #[cfg(test)]
+#[allow(clippy::unwrap_used)]
 mod tests {
     use super::*;
     use proptest::prelude::*;

@@ -210,7 +210,7 @@ pub fn record() -> Record {
 type Add<'a> = dyn FnMut(Subject, Quantity, &dyn Fn(f64) -> f64) + 'a;
 
 fn rooms(add: &mut Add<'_>, fire: &dyn Fn(f64) -> f64) {
-    for (index, share) in [(0, 1.0), (1, 0.62)] {
+    for (index, share, depth) in [(0, 1.0, 1.9), (1, 0.62, 1.5)] {
         let room = Subject::Room(index);
         let smoke = |t: f64| 1.0 / (1.0 + (-(t - 70.0) / 15.0).exp());
         add(room, Quantity::UpperTemperature, &move |t| {
@@ -220,8 +220,7 @@ fn rooms(add: &mut Add<'_>, fire: &dyn Fn(f64) -> f64) {
             293.0 + share * (150.0 * fire(t) + 40.0 * smoke(t))
         });
         add(room, Quantity::Interface, &move |t| {
-            2.4 - (1.9 - 0.4 * f64::from(u8::try_from(index).unwrap())) * smoke(t)
-                + 0.5 * bump(t, 490.0, 700.0, 50.0)
+            2.4 - depth * smoke(t) + 0.5 * bump(t, 490.0, 700.0, 50.0)
         });
         add(room, Quantity::UpperOxygen, &move |t| {
             0.207 - 0.13 * share * smoke(t) + 0.05 * bump(t, 500.0, 600.0, 30.0)

@@ -1,7 +1,7 @@
 //! An invented run for tests of readings and reports: a bedroom fire that
 //! starves and comes back when the front door is opened. Drawn with straight
 //! lines, not reckoned.
-#![allow(dead_code)]
+#![allow(dead_code, clippy::ptr_arg)]
 
 use doorglow::plan::{
     Action, Burning, Choices, Course, Curve, Fuel, FuelId, Item, Limits, Lining, OpenAir, Opening,
@@ -155,7 +155,7 @@ fn kelvin(line: Line<'_>) -> Vec<(f64, f64)> {
 }
 
 /// A record of the given lines, one value a second.
-pub fn drawn(plan: &Plan, until: u32, lines: &[(Subject, Quantity, Vec<(f64, f64)>)]) -> Record {
+pub fn drawn(plan: &Plan, until: u32, lines: &Lines) -> Record {
     let time: Vec<f64> = (0..=until).map(f64::from).collect();
     let columns = lines
         .iter()
@@ -217,7 +217,8 @@ pub fn starved_and_back() -> (Plan, Record) {
     (plan, record)
 }
 
-type Lines = Vec<(Subject, Quantity, Vec<(f64, f64)>)>;
+/// Drawn histories of a record.
+pub type Lines = Vec<(Subject, Quantity, Vec<(f64, f64)>)>;
 
 fn bedroom() -> Lines {
     use Quantity as Q;

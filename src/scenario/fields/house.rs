@@ -115,7 +115,7 @@ pub(in super::super) const ROOM: Table = table(
 
 pub(in super::super) const LINING: Table = table(
     "lining",
-    Shape::Named(100),
+    Shape::Named(400),
     "A lining that the catalogue does not have. It goes before one of the same name in the catalogue.",
     &[
         default(
@@ -182,7 +182,7 @@ pub(in super::super) const SHARED_WALL: Table = table(
 
 pub(in super::super) const OPENING: Table = table(
     "opening",
-    Shape::Named(200),
+    Shape::Named(400),
     "A door, a window or a gap between two rooms or to the open air.",
     &[
         default(
@@ -270,7 +270,7 @@ pub(in super::super) const LEAKAGE: Table = table(
         ),
         required(
             "area",
-            Kind::Quantity(D::Area, 1e-6, 50.0),
+            Kind::Quantity(D::Area, 1e-6, 10.0),
             "Orifice area of all of it together.",
             "0.06 m2",
         ),

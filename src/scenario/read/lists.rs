@@ -54,7 +54,7 @@ impl Reader {
         }
         let mut read: Vec<(f64, f64)> = Vec::with_capacity(rows.len());
         let mut whole = true;
-        for row in rows.iter() {
+        for row in rows {
             let Some(Value::Two([time, rate])) = self.two(field, row, BOTH) else {
                 whole = false;
                 continue;
@@ -109,7 +109,7 @@ impl Reader {
             return None;
         };
         let mut names = Vec::with_capacity(array.len());
-        for element in array.iter() {
+        for element in array {
             let text = self.text(field, element)?;
             names.push(Located {
                 value: text,

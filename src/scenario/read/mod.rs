@@ -216,13 +216,11 @@ impl<'a, 'i> Document<'a, 'i> {
             return reader.values(of, 0..0, Vec::new());
         };
         let span = self.key_span(of.name);
-        match value.get_ref() {
-            DeValue::Table(inner) => reader.values(of, span, table::entries(inner)),
-            _ => {
-                reader.not_a_table(of, value.span());
-                reader.values(of, span, Vec::new())
-            }
+        let inner = value.get_ref().as_table();
+        if inner.is_none() {
+            reader.not_a_table(of, value.span());
         }
+        reader.values(of, span, inner.map(table::entries).unwrap_or_default())
     }
 
     fn key_span(&self, name: &str) -> Range<usize> {
@@ -259,7 +257,7 @@ impl<'a, 'i> Document<'a, 'i> {
         for (key, span, value) in table::entries(all) {
             match value.get_ref() {
                 DeValue::Table(inner) => {
-                    reader.check_name(key, &span);
+                    reader.check_name(of, key, &span);
                     let name = Located {
                         value: key.to_owned(),
                         span,

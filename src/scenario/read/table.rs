@@ -1,15 +1,18 @@
 //! Reads the keys of one table against the field table.
 
 use super::super::fault::{Fault, code};
-use super::super::fields::{Field, Need, Shape, Table};
+use super::super::fields::{self, Field, Need, Shape, Table};
 use super::super::names;
 use super::values::{Located, Values};
 use std::ops::Range;
 use toml::Spanned;
 use toml::de::{DeTable, DeValue};
 
-/// Longest name of a room, opening and so on.
+/// Longest name of a room, station and so on.
 const LONGEST_NAME: usize = 60;
+/// Longest name of an opening or fuel, which may be made of two others
+/// ("house in hall").
+const LONGEST_JOINED: usize = 2 * LONGEST_NAME + 10;
 
 /// One key with its place and value.
 pub(super) type Entry<'a, 'i> = (&'a str, Range<usize>, &'a Spanned<DeValue<'i>>);
@@ -139,7 +142,7 @@ impl Reader {
             _ => usize::MAX,
         };
         let mut rows = Vec::new();
-        for row in array.iter() {
+        for row in array {
             if rows.len() >= most {
                 self.too_many(table, most, array.len(), row.span());
                 break;
@@ -183,15 +186,22 @@ impl Reader {
         );
     }
 
-    pub(super) fn check_name(&mut self, name: &str, span: &Range<usize>) {
+    pub(super) fn check_name(&mut self, of: &Table, name: &str, span: &Range<usize>) {
+        let longest = if [fields::OPENING.name, fields::FUEL.name].contains(&of.name) {
+            LONGEST_JOINED
+        } else {
+            LONGEST_NAME
+        };
         let printable = name.chars().all(|letter| !letter.is_control());
         let told = name.chars().any(char::is_alphanumeric);
-        if !printable || !told || name.chars().count() > LONGEST_NAME {
+        if !printable || !told || name.chars().count() > longest {
             self.faults.push(
                 Fault::error(
                     code::WRONG_KIND,
                     span.clone(),
-                    format!("this cannot be a name: letters or digits, at most {LONGEST_NAME}"),
+                    format!(
+                        "this cannot be a name: letters or digits, at most {longest} characters"
+                    ),
                 )
                 .help("write a name like bedroom_2, or \"Bedroom 2\" in quotes"),
             );

@@ -1,8 +1,9 @@
 //! What burns.
 
 use super::super::fault::{Fault, code};
+use super::super::names;
 use super::super::read::{Named, Sheet, Value, Values};
-use super::{Resolver, UNREAD, unwanted, wanted};
+use super::{Resolver, UNREAD, same_name, unwanted, wanted};
 use crate::plan::{Burning, Curve, Fuel, FuelId, Item, Room, RoomId};
 use crate::units::{Dimension, rounded};
 
@@ -67,7 +68,7 @@ impl Resolver<'_> {
         Item {
             name: named.name.value.clone(),
             room: room.unwrap_or(RoomId(0)),
-            fuel: fuel.map_or(FuelId(0), |fuel| place(fuels, fuel)),
+            fuel: fuel.map_or(FuelId(0), |fuel| self.place_fuel(fuels, fuel, values)),
             mass: if burner {
                 f64::INFINITY
             } else {
@@ -201,13 +202,21 @@ impl Resolver<'_> {
             );
         }
     }
-}
 
-/// Index of a fuel in the list, put there when it is new.
-fn place(fuels: &mut Vec<Fuel>, fuel: Fuel) -> FuelId {
-    if let Some(index) = fuels.iter().position(|known| *known == fuel) {
-        return FuelId(index);
+    /// Index of a fuel in the list, put there when it is new.
+    fn place_fuel(&mut self, fuels: &mut Vec<Fuel>, fuel: Fuel, values: &Values) -> FuelId {
+        if let Some(index) = fuels.iter().position(|known| *known == fuel) {
+            return FuelId(index);
+        }
+        let plain = names::plain(&fuel.name);
+        let clash = fuels
+            .iter()
+            .find(|known| names::plain(&known.name) == plain);
+        if let Some(clash) = clash {
+            let fault = same_name("fuel", &clash.name, &fuel.name, values.span("fuel"));
+            self.note(fault);
+        }
+        fuels.push(fuel);
+        FuelId(fuels.len() - 1)
     }
-    fuels.push(fuel);
-    FuelId(fuels.len() - 1)
 }

@@ -6,6 +6,7 @@ use super::super::read::{Located, Sheet, Values};
 use super::{Resolver, UNREAD};
 use crate::catalogue::catalogue;
 use crate::plan::{Course, Fuel, Lining};
+use std::ops::Range;
 
 /// How long a chain of `like` may be.
 const LONGEST_LIKE: usize = 10;
@@ -197,7 +198,7 @@ impl Resolver<'_> {
             self.note(
                 Fault::error(
                     code::DOES_NOT_FIT,
-                    values.span("carbon"),
+                    place(values, "carbon"),
                     format!("fuel \"{}\" takes no oxygen: it cannot burn", fuel.name),
                 )
                 .help("check carbon, hydrogen and oxygen"),
@@ -211,7 +212,7 @@ impl Resolver<'_> {
             self.note(
                 Fault::error(
                     code::DOES_NOT_FIT,
-                    values.span("soot_yield"),
+                    place(values, "soot_yield"),
                     format!(
                         "soot and CO of fuel \"{}\" take more carbon or heat than it has",
                         fuel.name
@@ -224,7 +225,7 @@ impl Resolver<'_> {
         if (per_oxygen - 1.0).abs() > 0.08 {
             self.note(
                 Fault::caution(
-                    values.span("heat_of_combustion"),
+                    place(values, "heat_of_combustion"),
                     format!(
                         "fuel \"{}\" gives {:.1} MJ per kg of oxygen; nearly all fuels give 13.1 within 8 %",
                         fuel.name,
@@ -234,6 +235,16 @@ impl Resolver<'_> {
                 .help("check the formula against the complete net heat of the volatiles"),
             );
         }
+    }
+}
+
+/// Place of a key, or of the table's header where the table has no such key:
+/// an item states some keys of its fuel, but not all.
+fn place(values: &Values, key: &str) -> Range<usize> {
+    if values.table.field(key).is_some() {
+        values.span(key)
+    } else {
+        values.span.clone()
     }
 }
 

@@ -15,6 +15,7 @@ use super::fault::{Fault, code};
 use super::fields::{KNOBS, Knob, Of};
 use super::names;
 use super::read::{Located, Named, Sheet, Values};
+use crate::catalogue::catalogue;
 use crate::plan::{Choices, OpenAir, PlacementRule, Plan, PlumeModel, RoomId};
 use std::ops::Range;
 
@@ -100,6 +101,11 @@ impl<'a> Resolver<'a> {
         for (what, things) in kinds {
             self.same_among(what, things.iter().map(|thing| &thing.name));
         }
+        let catalogue = catalogue();
+        let linings = catalogue.linings.iter().map(|row| row.lining.name.as_str());
+        self.nearly_catalogue("lining", &sheet.linings, linings);
+        let fuels = catalogue.fuels.iter().map(|row| row.fuel.name.as_str());
+        self.nearly_catalogue("fuel", &sheet.fuels, fuels);
         self.same_among(
             "tactic",
             sheet.tactics.iter().map(|sheet| &sheet.named.name),
@@ -114,6 +120,27 @@ impl<'a> Resolver<'a> {
                     )
                     .help("give the room another name"),
                 );
+            }
+        }
+    }
+
+    /// A name that is nearly one of the catalogue would leave two of a kind.
+    fn nearly_catalogue<'n>(
+        &mut self,
+        what: &str,
+        own: &[Named],
+        catalogue: impl Iterator<Item = &'n str>,
+    ) {
+        for known in catalogue {
+            let plain = names::plain(known);
+            for named in own {
+                let name = &named.name;
+                if name.value != known && names::plain(&name.value) == plain {
+                    let span = name.span.clone();
+                    self.note(same_name(what, known, &name.value, span).help(
+                        "write it exactly as in the catalogue to replace it, or give it another name",
+                    ));
+                }
             }
         }
     }

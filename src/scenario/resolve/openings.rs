@@ -2,12 +2,15 @@
 
 use super::super::fault::{Fault, code};
 use super::super::fields::{OPEN_AIR_NAME, Of};
+use super::super::names;
 use super::super::read::{Located, Named, Opened, Sheet, Values};
 use super::{Resolver, UNREAD, same_name, unwanted, wanted};
 use crate::catalogue::catalogue;
 use crate::plan::{Opening, OpeningKind, Room, Space};
 use crate::units::{Dimension, write};
 
+/// Most openings, gaps of leakage included.
+const MOST_OPENINGS: usize = 400;
 /// Lengths that differ by less are equal, m.
 const HAIR: f64 = 1e-9;
 
@@ -188,43 +191,52 @@ impl Resolver<'_> {
             );
         }
         for side in [opening.from, opening.to] {
-            let Space::Room(id) = side else { continue };
-            if !self.sized(id.0) {
-                continue;
-            }
-            let room = &rooms[id.0];
-            if readable && opening.head > room.height + HAIR {
-                self.note(
-                    Fault::error(
-                        code::DOES_NOT_FIT,
-                        values.span("head"),
-                        format!(
-                            "opening \"{}\" is higher than room \"{}\"",
-                            opening.name, room.name
-                        ),
-                    )
-                    .label(format!("the room is {} high", text(room.height)))
-                    .help(format!("write at most \"{}\"", text(room.height))),
-                );
-            }
-            let side = room.width.max(room.length);
-            if opening.width > side + HAIR {
-                self.note(
-                    Fault::error(
-                        code::DOES_NOT_FIT,
-                        values.span("width"),
-                        format!(
-                            "opening \"{}\" is wider than any wall of room \"{}\"",
-                            opening.name, room.name
-                        ),
-                    )
-                    .label(format!("its longest wall is {}", text(side)))
-                    .help(format!("write at most \"{}\"", text(side))),
-                );
+            if let Space::Room(id) = side
+                && self.sized(id.0)
+            {
+                self.opening_fits_room(values, opening, &rooms[id.0], readable);
             }
         }
         if let Space::Room(id) = opening.from {
             self.place_fits(values, &rooms[id.0], id.0);
+        }
+    }
+
+    fn opening_fits_room(
+        &mut self,
+        values: &Values,
+        opening: &Opening,
+        room: &Room,
+        readable: bool,
+    ) {
+        if readable && opening.head > room.height + HAIR {
+            self.note(
+                Fault::error(
+                    code::DOES_NOT_FIT,
+                    values.span("head"),
+                    format!(
+                        "opening \"{}\" is higher than room \"{}\"",
+                        opening.name, room.name
+                    ),
+                )
+                .label(format!("the room is {} high", text(room.height)))
+                .help(format!("write at most \"{}\"", text(room.height))),
+            );
+        }
+        let side = room.width.max(room.length);
+        if opening.width > side + HAIR {
+            self.note(
+                Fault::error(
+                    code::DOES_NOT_FIT,
+                    values.span("width"),
+                    format!(
+                        "opening \"{}\" is wider than any wall of room \"{}\"",
+                        opening.name, room.name
+                    ),
+                )
+                .label(format!("its longest wall is {}", text(side)))
+                .help(format!("write at most \"{}\"", text(side))),
+            );
         }
     }
 
@@ -302,22 +314,33 @@ impl Resolver<'_> {
         leaks
     }
 
-    /// A gap made from leakage must not meet an opening of the same name.
+    /// A gap made from leakage must not meet an opening of the same name, and
+    /// all of them together must not be too many.
     pub(super) fn same_opening_names(&mut self, openings: &[Opening]) {
         let sheet: &Sheet = self.sheet;
-        for opening in &openings[sheet.openings.len()..] {
-            let clash = sheet
-                .openings
-                .iter()
-                .find(|named| named.name.value == opening.name);
-            if let Some(named) = clash {
-                self.note(same_name(
-                    "opening",
-                    &opening.name,
-                    &named.name.value,
-                    named.name.span.clone(),
-                ));
+        let told: Vec<String> = openings
+            .iter()
+            .map(|opening| names::plain(&opening.name))
+            .collect();
+        for (index, opening) in openings.iter().enumerate().skip(sheet.openings.len()) {
+            if let Some(first) = told[..index].iter().position(|name| *name == told[index]) {
+                let span = sheet
+                    .leakages
+                    .iter()
+                    .find(|leak| opening.name.starts_with(&leak.name.value))
+                    .map_or(0..0, |leak| leak.name.span.clone());
+                let fault = same_name("opening", &openings[first].name, &opening.name, span);
+                self.note(fault);
             }
+        }
+        if openings.len() > MOST_OPENINGS {
+            self.note(Fault::elsewhere(
+                code::TOO_MUCH,
+                format!(
+                    "{} openings, gaps of leakage included; at most {MOST_OPENINGS} are taken",
+                    openings.len()
+                ),
+            ));
         }
     }
 }

@@ -85,7 +85,7 @@ pub fn draw_svg(
     };
     canvas.keep(|area| area.fill(&plotters::style::WHITE));
     draw(&mut canvas);
-    canvas.keep(|area| area.present());
+    canvas.keep(finished);
     if let Some(reason) = canvas.failure.take() {
         return Err(PlotError {
             file: file.to_owned(),
@@ -94,6 +94,10 @@ pub fn draw_svg(
     }
     drop(canvas);
     Ok(with_head(&text, title, (width, height), size))
+}
+
+fn finished(area: &DrawingArea<SVGBackend<'_>, Shift>) -> Result<(), String> {
+    area.present().map_err(|error| error.to_string())
 }
 
 /// Puts the picture's own size, a title for screen readers and our mark where
@@ -261,6 +265,7 @@ fn escaped(text: &str) -> String {
 }
 
 #[cfg(test)]
+#[allow(clippy::unwrap_used)]
 mod tests {
     use super::*;
 

@@ -117,7 +117,7 @@ fn draw_shades(canvas: &mut Canvas<'_>, panel: &Panel, frame: &Frame) {
         let until = x_of(shade.until.clamp(0.0, frame.end), frame.end);
         canvas.rectangle((from, frame.top), (until, frame.bottom), SHADE);
         if text_width(&shade.label, TICK_SIZE) + 8.0 < until - from {
-            let at = ((from + until) / 2.0, frame.top + 10.0);
+            let at = (f64::midpoint(from, until), frame.top + 10.0);
             canvas.write(
                 &shade.label,
                 at,

@@ -34,8 +34,9 @@ pub fn picture(record: &Record, plan: &Plan) -> Picture {
         at_most: Some((1.25 * peak(&burned).max(peak(&given_off))).max(100.0)),
         curves: vec![
             line("incoming air could burn", air, BLUE, Stroke::Dashed, 2),
-            line("given off as fuel", given_off, INK, Stroke::Dotted, 2),
             line("burned", burned, VERMILION, Stroke::Solid, 3),
+            // On top: it lies on the line of what burns while there is air enough.
+            line("given off as fuel", given_off, INK, Stroke::Dotted, 2),
         ],
         shades: short_of_air(record, plan),
         ..Panel::default()

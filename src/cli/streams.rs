@@ -1,0 +1,59 @@
+//! Standard output carries results, standard error everything else.
+
+use super::failure::Failure;
+use anstream::ColorChoice;
+use std::io::{self, IsTerminal, Write};
+
+/// Width for a stream that is not a terminal.
+const PLAIN_WIDTH: usize = 80;
+
+/// Widest text that is still easy to read.
+const WIDEST: usize = 140;
+
+/// Writes results. A reader that has gone away (`| head`) is fine.
+///
+/// # Errors
+/// When standard output refuses for any other reason.
+pub fn write(text: &str) -> Result<(), Failure> {
+    let mut out = anstream::stdout().lock();
+    match out.write_all(text.as_bytes()).and_then(|()| out.flush()) {
+        Err(error) if error.kind() != io::ErrorKind::BrokenPipe => Err(Failure::Output(error)),
+        _ => Ok(()),
+    }
+}
+
+/// Says something on the side; nobody has to be listening.
+pub fn say(text: &str) {
+    let mut out = anstream::stderr().lock();
+    let _ = writeln!(out, "{}", text.trim_end());
+}
+
+/// True when results may be coloured.
+pub fn is_output_coloured() -> bool {
+    anstream::AutoStream::choice(&io::stdout()) != ColorChoice::Never
+}
+
+/// True when what is said on the side may be coloured.
+pub fn is_side_coloured() -> bool {
+    anstream::AutoStream::choice(&io::stderr()) != ColorChoice::Never
+}
+
+/// True when somebody watches standard error.
+pub fn is_side_watched() -> bool {
+    io::stderr().is_terminal()
+}
+
+/// Characters in a line of results.
+pub fn output_width() -> usize {
+    width(terminal_size::terminal_size_of(io::stdout()))
+}
+
+/// Characters in a line on the side.
+pub fn side_width() -> usize {
+    width(terminal_size::terminal_size_of(io::stderr()))
+}
+
+fn width(size: Option<(terminal_size::Width, terminal_size::Height)>) -> usize {
+    size.map_or(PLAIN_WIDTH, |(width, _)| usize::from(width.0))
+        .clamp(40, WIDEST)
+}

@@ -1,0 +1,271 @@
+//! The summary in words.
+
+use super::lines::{Page, glued};
+use super::values::{clock, metric, since};
+use crate::reading::{
+    Answer, Band, Comeback, Extreme, Flashover, LimitSummary, RoomSummary, StationSummary, Summary,
+    spoken,
+};
+use crate::record::{Dimension, Ended};
+
+/// A value that stays on one line.
+fn value(value: f64, dimension: Dimension) -> String {
+    glued(&super::values::value(value, dimension))
+}
+
+/// Writes the summary.
+pub(super) fn write(page: &mut Page, summary: &Summary) {
+    page.heading("SUMMARY");
+    fire(page, summary);
+    for room in summary.rooms.iter().filter(|room| room.hot_layer) {
+        if let Some(text) = room_words(summary, room) {
+            page.entry(&spoken(&room.name), &text);
+        }
+    }
+    let without: Vec<String> = summary
+        .rooms
+        .iter()
+        .filter(|room| !room.hot_layer)
+        .map(|room| spoken(&room.name))
+        .collect();
+    if !without.is_empty() {
+        page.entry("no hot layer in", &without.join(", "));
+    }
+    for station in &summary.stations {
+        station_words(page, summary, station);
+    }
+    if let Some(pressure) = summary.highest_pressure {
+        page.entry("strongest pressure", &at(pressure, Dimension::Pressure));
+    }
+    page.entry("run", &ended(summary));
+    closures(page, summary);
+}
+
+/// Value and time of an extreme.
+fn at(extreme: Extreme, dimension: Dimension) -> String {
+    format!(
+        "{} at {}",
+        value(extreme.value, dimension),
+        clock(extreme.time)
+    )
+}
+
+/// Value and time of an extreme, with the time since the first opening.
+fn at_since(summary: &Summary, extreme: Extreme, dimension: Dimension) -> String {
+    let text = at(extreme, dimension);
+    match &summary.first_opening {
+        Some(first) if extreme.time >= first.time => {
+            format!("{text} ({})", since(extreme.time - first.time))
+        }
+        _ => text,
+    }
+}
+
+fn fire(page: &mut Page, summary: &Summary) {
+    if let Some(first) = &summary.first_opening {
+        let text = format!("{}, at {}", spoken(&first.action), clock(first.time));
+        page.entry(
+            "first opening",
+            &format!("{text}; times with + count from it"),
+        );
+    }
+    if let Some(peak) = summary.peak_before {
+        let mut text = at(peak, Dimension::Power);
+        if summary.first_opening.is_some() {
+            text.push_str(" before the first opening");
+        }
+        if let Some(lowest) = summary.lowest_before {
+            text = format!("{text}, then down to {}", at(lowest, Dimension::Power));
+        }
+        page.entry("heat burned", &text);
+    }
+    if let Some(peak) = summary.peak_after {
+        let mut text = format!("{} after it", at_since(summary, peak, Dimension::Power));
+        if let Some(air) = summary.air_could_burn_at_peak {
+            let air = value(air, Dimension::Power);
+            text = format!("{text}; the incoming air could then burn {air}");
+        }
+        page.entry("", &text);
+    }
+    if let Some(comeback) = summary.comeback {
+        page.entry("", &comeback_words(summary, comeback));
+    }
+    let stretches: Vec<String> = summary
+        .short_of_air
+        .iter()
+        .map(|stretch| match stretch.to {
+            Some(to) => format!("{} to {}", clock(stretch.from), clock(to)),
+            None => format!("{} to the end", clock(stretch.from)),
+        })
+        .collect();
+    let text = if stretches.is_empty() {
+        "never in the model".to_owned()
+    } else {
+        stretches.join(", ")
+    };
+    page.entry("short of air", &text);
+    if let Some(lowest) = summary.lowest_base_oxygen {
+        let text = format!(
+            "lowest {}",
+            at_since(summary, lowest, Dimension::VolumeFraction)
+        );
+        page.entry("oxygen at the flame", &text);
+    }
+}
+
+/// Whether and when the fire comes back.
+fn comeback_words(summary: &Summary, comeback: Comeback) -> String {
+    let Comeback::At { time, band } = comeback else {
+        return "does not come back within the run, in the model".to_owned();
+    };
+    let opened = summary
+        .first_opening
+        .as_ref()
+        .map_or(0.0, |first| first.time);
+    let text = format!(
+        "back above three times its starved level at {}",
+        since(time - opened)
+    );
+    match band {
+        Some(band) => format!("{text} ({})", band_words(band, opened)),
+        None => text,
+    }
+}
+
+/// A band on the clock of the opening.
+fn band_words(band: Band, opened: f64) -> String {
+    let earliest = since(band.earliest - opened);
+    let latest = since(band.latest - opened);
+    glued(&format!("band {earliest} to {latest}"))
+}
+
+fn room_words(summary: &Summary, room: &RoomSummary) -> Option<String> {
+    let mut parts = Vec::new();
+    if let Some(hottest) = room.hottest_layer {
+        let text = at_since(summary, hottest, Dimension::Temperature);
+        parts.push(format!("smoke layer up to {text}"));
+    }
+    if let Some(lowest) = room.lowest_smoke_level {
+        let text = at_since(summary, lowest, Dimension::Length);
+        parts.push(format!("smoke down to {text}"));
+    }
+    parts.extend(flashover_words(summary, room));
+    (!parts.is_empty()).then(|| parts.join("; "))
+}
+
+/// Flashover before and after the first opening, with what each criterion
+/// says where it is not a plain no.
+fn flashover_words(summary: &Summary, room: &RoomSummary) -> Option<String> {
+    let before = if summary.first_opening.is_some() {
+        " before the opening"
+    } else {
+        ""
+    };
+    let readings: Vec<(&Flashover, &str)> = room
+        .flashover_before
+        .iter()
+        .map(|reading| (reading, before))
+        .chain(
+            room.flashover_after
+                .iter()
+                .map(|reading| (reading, " after the opening")),
+        )
+        .collect();
+    if readings.is_empty() {
+        return None;
+    }
+    if readings
+        .iter()
+        .all(|(reading, _)| reading.word == Answer::No)
+    {
+        return Some("flashover: no".to_owned());
+    }
+    let words: Vec<String> = readings
+        .into_iter()
+        .map(|(reading, when)| {
+            format!(
+                "flashover{when}: {} (layer {}: {}, floor {}: {})",
+                reading.word.word(),
+                glued(&metric(reading.hottest_layer, Dimension::Temperature)),
+                reading.by_layer.word(),
+                glued(&metric(reading.highest_flux, Dimension::Flux)),
+                reading.by_floor_flux.word(),
+            )
+        })
+        .collect();
+    Some(words.join("; "))
+}
+
+fn station_words(page: &mut Page, summary: &Summary, station: &StationSummary) {
+    let place = format!(
+        "{}, {}, head at {}",
+        spoken(&station.room),
+        station.posture,
+        value(station.height, Dimension::Length),
+    );
+    page.entry(&format!("station {}", spoken(&station.name)), &place);
+    for limit in &station.limits {
+        page.entry("", &limit_words(summary, limit));
+    }
+    let worst: Vec<String> = station
+        .worst
+        .iter()
+        .map(|worst| {
+            let text = at_since(summary, worst.extreme, worst.quantity.dimension());
+            format!("{} {text}", worst.quantity.label())
+        })
+        .collect();
+    if !worst.is_empty() {
+        page.entry("", &format!("worst: {}", worst.join("; ")));
+    }
+}
+
+/// One limit: when it is reached, or that it is not.
+fn limit_words(summary: &Summary, limit: &LimitSummary) -> String {
+    let what = format!("{}, {}", limit.words, value(limit.limit, limit.dimension));
+    let Some(first) = limit.first else {
+        return format!("{what}: not reached in the model");
+    };
+    let mut text = format!("{what}: first at {}", clock(first));
+    if let Some(opening) = &summary.first_opening {
+        match limit.first_after_opening {
+            Some(after) if after > opening.time => {
+                text = format!(
+                    "{text}, after the opening at {}",
+                    since(after - opening.time)
+                );
+            }
+            Some(_) => text.push_str(", still so at the opening"),
+            None => text.push_str(", not again after the opening"),
+        }
+    }
+    text
+}
+
+fn ended(summary: &Summary) -> String {
+    match &summary.ended {
+        Ended::Completed => format!("complete, {}", clock(summary.end)),
+        Ended::Interrupted(time) => {
+            format!(
+                "stopped by the user at {}; later moments are missing",
+                clock(*time)
+            )
+        }
+        Ended::Failed(time, why) => {
+            format!(
+                "could not go on at {}: {why}; later moments are missing",
+                clock(*time)
+            )
+        }
+    }
+}
+
+/// Closure of the ledger in one entry.
+fn closures(page: &mut Page, summary: &Summary) {
+    let closures = &summary.closures;
+    let text = format!(
+        "closes to {:.0e} in mass, {:.0e} in energy, {:.0e} in oxygen, {:.0e} in carbon",
+        closures.mass, closures.energy, closures.oxygen, closures.carbon,
+    );
+    page.entry("ledger", &text);
+}
