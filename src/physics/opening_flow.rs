@@ -94,23 +94,23 @@ impl Bands {
 }
 
 /// `f(d)`, the regularised root, and `F(d)`, its integral from zero.
-fn root_and_integral(d: f64) -> (f64, f64) {
-    let s = (d * d + REGULARISATION * REGULARISATION).sqrt();
+fn root_and_integral(d: f64, e: f64) -> (f64, f64) {
+    let s = (d * d + e * e).sqrt();
     let r = s.sqrt();
     (d / r, (2.0 / 3.0) * s * r)
 }
 
 /// Mean of `f` and of `f'` over a stretch in which the difference runs
 /// linearly from `d1` to `d2`.
-fn mean_root(d1: f64, d2: f64) -> (f64, f64) {
-    let (f1, big1) = root_and_integral(d1);
-    let (f2, big2) = root_and_integral(d2);
+fn mean_root(d1: f64, d2: f64, e: f64) -> (f64, f64) {
+    let (f1, big1) = root_and_integral(d1, e);
+    let (f2, big2) = root_and_integral(d2, e);
     let spread = d2 - d1;
-    if spread.abs() > 1e-4 * d1.abs().max(d2.abs()).max(REGULARISATION) {
+    if spread.abs() > 1e-4 * d1.abs().max(d2.abs()).max(e) {
         ((big2 - big1) / spread, (f2 - f1) / spread)
     } else {
         let d = 0.5 * (d1 + d2);
-        let s2 = d * d + REGULARISATION * REGULARISATION;
+        let s2 = d * d + e * e;
         let r = s2.sqrt().sqrt();
         (d / r, (1.0 - 0.5 * d * d / s2) / r)
     }
@@ -122,6 +122,20 @@ fn mean_root(d1: f64, d2: f64) -> (f64, f64) {
 /// Bands come from the bottom up; flows are zero-width safe and continuous in
 /// all arguments.
 pub fn bands(first: &Side, second: &Side, sill: f64, head: f64, coefficient_width: f64) -> Bands {
+    bands_regularised(first, second, sill, head, coefficient_width, REGULARISATION)
+}
+
+/// As [`bands`], with the orifice law made linear below about
+/// `regularisation` Pa: for ways so small that what they pass at such
+/// differences does not matter, while the steep slope at zero would.
+pub fn bands_regularised(
+    first: &Side,
+    second: &Side,
+    sill: f64,
+    head: f64,
+    coefficient_width: f64,
+    regularisation: f64,
+) -> Bands {
     let mut bands = Bands::default();
     let mut cuts = [
         sill,
@@ -146,7 +160,7 @@ pub fn bands(first: &Side, second: &Side, sill: f64, head: f64, coefficient_widt
             let from_upper = upper[usize::from(!forward)];
             let side = if forward { first } else { second };
             let density = side.density[usize::from(from_upper)];
-            let (mean, slope) = mean_root(a, b);
+            let (mean, slope) = mean_root(a, b, regularisation);
             let scale = coefficient_width * (z2 - z1) * (2.0 * density).sqrt();
             bands.push(Band {
                 bottom: z1,

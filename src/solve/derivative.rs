@@ -104,6 +104,11 @@ impl<'a> Model<'a> {
         }
     }
 
+    /// Mean gauge pressure of a tight group in the last evaluation, Pa.
+    pub fn group_pressure(&self, group: usize) -> f64 {
+        self.group_pressure.get(group).copied().unwrap_or(0.0)
+    }
+
     /// What the heat functions need to see.
     pub fn heat_scene<'b>(&'b self, y: &'b [f64]) -> heat::Scene<'b> {
         heat::Scene {

@@ -1,4 +1,4 @@
-//! Tight groups: rooms joined by openings with so little way to the outside
+//! Tight groups: rooms joined by openings with so little way to anywhere else
 //! that the quasi-steady pressure would be wrong or not exist. They carry one
 //! dynamic mean pressure; when they are opened, joined or shut off, the
 //! pressures even out isentropically and the gas that flows is booked.
@@ -10,24 +10,43 @@ use super::pressure::TightGroup;
 use super::schedule::Stand;
 use crate::plan::{Opening, Plan, Space};
 
-/// Flow coefficient times area to the outside per volume of the group below
-/// which it is tight, 1/m (the quasi-steady error passes 1 K near here).
+/// Flow coefficient times area per volume of a room (or group) below which a
+/// way out of it is tight, 1/m (the quasi-steady error passes 1 K near here).
 const TIGHT: f64 = 2e-5;
+
+/// The same for a room whose quasi-steady pressure was found too high: a
+/// narrow door does not join it to the next room, 1/m.
+const TIGHT_FORCED: f64 = 1e-2;
 
 /// Ratio of heat capacities for evening out, air.
 const GAMMA: f64 = 1.4;
 
-/// Gauge pressure of a quasi-steady group at which it is made tight, Pa.
+/// Quasi-steady pressure difference at which a room is made tight, Pa.
 pub const OVERPRESSURE: f64 = 2000.0;
 
-/// Rooms joined by openings, each list rising, in the order of first rooms.
-pub fn joined(plan: &Plan, stands: &[Stand]) -> Vec<Vec<usize>> {
+/// Pressure of a room made tight at which it is let go again, Pa.
+pub const RELEASE: f64 = 500.0;
+
+fn area(opening: &Opening, stand: &Stand) -> f64 {
+    stand.coefficient_width * (opening.head - opening.sill)
+}
+
+/// Rooms joined by openings wide enough for a quasi-steady difference, each
+/// list rising, in the order of first rooms.
+fn joined(plan: &Plan, building: &Building, stands: &[Stand], forced: &[bool]) -> Vec<Vec<usize>> {
     let n = plan.rooms.len();
     let mut label: Vec<usize> = (0..n).collect();
     for (opening, stand) in plan.openings.iter().zip(stands) {
-        if let (Space::Room(a), Space::Room(b)) = (opening.from, opening.to)
-            && stand.coefficient_width > 0.0
-        {
+        let (Space::Room(a), Space::Room(b)) = (opening.from, opening.to) else {
+            continue;
+        };
+        let limit = if forced[a.0] || forced[b.0] {
+            TIGHT_FORCED
+        } else {
+            TIGHT
+        };
+        let volume = building.rooms[a.0].volume.min(building.rooms[b.0].volume);
+        if area(opening, stand) >= limit * volume {
             let (keep, drop) = (label[a.0].min(label[b.0]), label[a.0].max(label[b.0]));
             label
                 .iter_mut()
@@ -48,18 +67,18 @@ pub fn tight(
     stands: &[Stand],
     forced: &[bool],
 ) -> Vec<TightGroup> {
-    joined(plan, stands)
+    joined(plan, building, stands, forced)
         .into_iter()
         .filter(|rooms| {
             let volume: f64 = rooms.iter().map(|r| building.rooms[*r].volume).sum();
-            let area: f64 = plan
+            let way_out: f64 = plan
                 .openings
                 .iter()
                 .zip(stands)
                 .filter(|(o, _)| leads_out(o, rooms))
-                .map(|(o, s)| s.coefficient_width * (o.head - o.sill))
+                .map(|(o, s)| area(o, s))
                 .sum();
-            area < TIGHT * volume || rooms.iter().any(|r| forced[*r])
+            way_out < TIGHT * volume || rooms.iter().any(|r| forced[*r])
         })
         .map(|rooms| TightGroup { rooms })
         .collect()

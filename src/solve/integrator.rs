@@ -93,7 +93,11 @@ struct Inner<'a, E> {
     dy: Vec<f64>,
     fault: Option<String>,
     stopped: bool,
+    /// Refused evaluations so far, and whether the last one was.
+    refusals: u32,
+    refused: bool,
     time: f64,
+    before: f64,
     last_step: f64,
 }
 
@@ -111,8 +115,13 @@ impl<E: Equations> System<f64, DVector<f64>> for Adapter<'_, '_, E> {
             finite &= y.is_finite();
         }
         let taken = finite && inner.equations.rates(time, &inner.y, &mut inner.dy);
-        if !taken || inner.dy.iter().any(|r| !r.is_finite()) {
-            rates.fill(REFUSED_SLOPE);
+        inner.refused = !taken || inner.dy.iter().any(|r| !r.is_finite());
+        if inner.refused {
+            // Never twice the same: equal slopes in all stages of a step would
+            // cancel in its error estimate.
+            inner.refusals = inner.refusals.wrapping_add(1);
+            let sign = if inner.refusals % 2 == 0 { 1.0 } else { -1.0 };
+            rates.fill(sign * REFUSED_SLOPE * f64::from(1 + inner.refusals % 5));
             return;
         }
         for ((r, dy), s) in rates.iter_mut().zip(&inner.dy).zip(self.scale) {
@@ -126,7 +135,13 @@ impl<E: Equations> System<f64, DVector<f64>> for Adapter<'_, '_, E> {
             *y = x * s;
         }
         inner.last_step = time - inner.time;
+        inner.before = inner.time;
         inner.time = time;
+        // The last stage is the evaluation at the accepted state.
+        if inner.refused {
+            inner.fault = Some("a step led to a state that cannot be".into());
+            return true;
+        }
         if inner.y.iter().any(|y| !y.is_finite()) {
             inner.fault = Some("a quantity is no longer a number".into());
             return true;
@@ -149,7 +164,10 @@ pub fn integrate<E: Equations>(
         dy: vec![0.0; state.len()],
         fault: None,
         stopped: false,
+        refusals: 0,
+        refused: false,
         time: stretch.start,
+        before: stretch.start,
         last_step: stretch.first_step,
     });
     let scaled = DVector::from_iterator(state.len(), state.iter().zip(scale).map(|(y, s)| y / s));
@@ -177,7 +195,9 @@ pub fn integrate<E: Equations>(
         OutputType::Continuous,
     );
     let result = stepper.integrate_with_continuous_output_model(&mut model);
-    let last = stepper.y_out().last().cloned();
+    // A state at fault is not handed out; the one before it is.
+    let fault = usize::from(inner.borrow().fault.is_some());
+    let last = stepper.y_out().iter().rev().nth(fault).cloned();
     let steps = stepper.x_out().len() as u64;
     drop(stepper);
     let inner = inner.into_inner();
@@ -195,10 +215,10 @@ pub fn integrate<E: Equations>(
     Solution {
         model,
         scale: scale.to_vec(),
-        time: if outcome == Outcome::Reached {
-            stretch.end
-        } else {
-            inner.time
+        time: match outcome {
+            Outcome::Reached => stretch.end,
+            _ if fault > 0 => inner.before,
+            _ => inner.time,
         },
         state,
         outcome,

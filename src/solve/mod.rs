@@ -6,6 +6,7 @@ mod building;
 mod burning;
 mod changes;
 mod derivative;
+mod driver;
 mod flags;
 mod groups;
 mod heat;
@@ -17,6 +18,7 @@ mod observe;
 mod pressure;
 mod run;
 mod schedule;
+mod stretches;
 
 pub use building::{LAYER_GUARD, PlanFault, START_LAYER, WALL_STRIPS};
 pub use run::run;

@@ -9,7 +9,7 @@ use super::layers::Layers;
 use super::layout::{LOWER, UPPER};
 use super::linear::solve_in_place;
 use super::schedule::Stand;
-use crate::physics::opening_flow::{Bands, GRAVITY, Side, bands};
+use crate::physics::opening_flow::{Bands, GRAVITY, REGULARISATION, Side, bands_regularised};
 use crate::physics::plume::buoyant_entrainment;
 use crate::physics::smooth::smoothstep;
 use crate::plan::{Choices, Opening, Space};
@@ -26,6 +26,14 @@ const MOST_ITERATIONS: usize = 60;
 /// Temperature step over which inflow turns from the lower to the upper
 /// layer, K.
 const DEPOSIT_STEP: f64 = 10.0;
+
+/// Fastest rate at which a tight group's mean pressure may even out near zero
+/// difference, 1/s: its orifice law is made linear below the difference that
+/// gives this rate, or the square root's slope there would limit the steps.
+const EVENING_RATE: f64 = 2.0;
+
+/// Largest difference below which it may be made linear, Pa.
+const WIDEST_REGULARISATION: f64 = 10.0;
 
 /// Gas going one way through an opening.
 #[derive(Debug, Clone, Copy, Default)]
@@ -70,6 +78,8 @@ pub struct Passage {
     growth: [[[f64; 2]; 2]; 2],
     /// Share that goes to the upper layer by buoyancy, `[direction][source]`.
     deposit: [[f64; 2]; 2],
+    /// Difference below which the orifice law is linear, Pa.
+    regularisation: f64,
 }
 
 impl Passage {
@@ -149,6 +159,8 @@ pub struct Balance {
     /// groups' mean pressures (Pa/s).
     solution: Vec<f64>,
     rooms: usize,
+    /// Tight group of each room.
+    group_of: Vec<Option<usize>>,
     fixed: Vec<f64>,
     stiffness: Vec<f64>,
     internal: Vec<[f64; 2]>,
@@ -187,6 +199,7 @@ impl Balance {
             iterations: 0,
             solution: vec![0.0; 2 * n],
             rooms: n,
+            group_of: vec![None; n],
             fixed: vec![0.0; n],
             stiffness: vec![0.0; n],
             internal: vec![[0.0; 2]; n],
@@ -206,6 +219,12 @@ impl Balance {
     /// Rate of the mean pressure of a tight group, Pa/s.
     pub fn group_rate(&self, group: usize) -> f64 {
         self.solution[self.rooms + group]
+    }
+
+    /// Gauge pressure of a room (Pa) that the last search for a balance tried
+    /// last; not a number when it ran away entirely.
+    pub fn tried(&self, room: usize) -> f64 {
+        self.trial[room]
     }
 
     /// Solves for the pressures; streams of all passages are left filled.
@@ -279,6 +298,45 @@ impl Balance {
         }
         for passage in &mut self.passages {
             passage.prepare(layers);
+        }
+        self.regularise(problem);
+    }
+
+    /// Widens the linear part of the orifice law of the ways out of tight
+    /// groups where the group would even out faster than is worth following.
+    fn regularise(&mut self, problem: &Problem<'_>) {
+        for passage in &mut self.passages {
+            passage.regularisation = REGULARISATION;
+        }
+        if problem.groups.is_empty() {
+            return;
+        }
+        self.group_of.fill(None);
+        for (g, group) in problem.groups.iter().enumerate() {
+            for &room in &group.rooms {
+                self.group_of[room] = Some(g);
+            }
+        }
+        let speed = (2.0 / problem.building.air_density).sqrt();
+        for (g, group) in problem.groups.iter().enumerate() {
+            let leads_out = |passage: &Passage| {
+                let inside = |room: Option<usize>| room.and_then(|r| self.group_of[r]) == Some(g);
+                inside(passage.rooms[0]) != inside(passage.rooms[1])
+            };
+            let ways = self.passages.iter().zip(problem.openings);
+            let area: f64 = ways
+                .filter(|(passage, _)| leads_out(passage))
+                .map(|(passage, o)| passage.stand.coefficient_width * (o.head - o.sill))
+                .sum();
+            let stiffness: f64 = group.rooms.iter().map(|r| self.stiffness[*r]).sum();
+            let root = area * speed / (stiffness * EVENING_RATE);
+            let wide = (root * root).min(WIDEST_REGULARISATION);
+            for n in 0..self.passages.len() {
+                if leads_out(&self.passages[n]) {
+                    let own = &mut self.passages[n].regularisation;
+                    *own = own.max(wide);
+                }
+            }
         }
     }
 
@@ -372,12 +430,13 @@ impl Passage {
     fn flow(&mut self, problem: &Problem<'_>, opening: &Opening, trial: &[f64]) {
         let first = self.side(problem, 0, trial);
         let second = self.side(problem, 1, trial);
-        self.bands = bands(
+        self.bands = bands_regularised(
             &first,
             &second,
             opening.sill,
             opening.head,
             self.stand.coefficient_width,
+            self.regularisation,
         );
         self.streams = [Stream::default(); 2];
         for direction in 0..2 {

@@ -1,6 +1,8 @@
 //! Plans built by hand for tests of the solver.
 #![allow(dead_code)]
 
+pub mod generated;
+
 use doorglow::plan::{
     Burning, Choices, Course, Fuel, FuelId, Item, Lining, OpenAir, Opening, OpeningKind, Plan,
     Room, RoomId, Space,
