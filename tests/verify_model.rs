@@ -1,4 +1,4 @@
-//! The solver as a whole against solutions known in advance: a rate as given in
+//! The solver as a whole against solutions known in advance: a free curve in
 //! clean air, smoke filling, pressures of leaky and sealed rooms, rest, and a
 //! fire that stands in its own smoke.
 
@@ -7,7 +7,7 @@
 mod common;
 
 use common::{burner, door, gap, lining, methane, plan, polyurethane, room};
-use doorglow::physics::growth::FAST;
+use doorglow::physics::growth::{FAST, t_squared};
 use doorglow::physics::hand::smoke_layer_height;
 use doorglow::plan::{Burning, Curve, FuelId, Item, Lining, Plan, PlumeModel, RoomId};
 use doorglow::record::{Ended, Quantity, Record, Subject};
@@ -91,6 +91,30 @@ fn free_burning() -> Plan {
     // Nothing but clean air below the smoke.
     plan.choices.downflow_factor = 0.0;
     plan
+}
+
+/// Largest departure from the free curve after the first minute, as a share.
+fn departure(plan: &Plan) -> [f64; 2] {
+    let record = run(plan, 1.0);
+    let burned = record.get(Subject::Item(0), Quantity::Burned);
+    let given = record.get(Subject::Item(0), Quantity::GivenOff);
+    [burned, given].map(|history| {
+        record
+            .time
+            .iter()
+            .zip(history)
+            .filter(|(time, _)| **time >= 60.0)
+            .map(|(time, watts)| watts / t_squared(FAST, 1.4e6, *time) - 1.0)
+            .fold(0.0_f64, |a, b| if b.abs() > a.abs() { b } else { a })
+    })
+}
+
+#[test]
+fn verify_free_curve_in_clean_air_comes_back() {
+    let [burned, given] = departure(&free_burning());
+    println!("free curve: burned off by {burned:.2e}, given off by {given:.2e}");
+    assert!(given.abs() < 1e-3, "given off {given:e}");
+    assert!(burned.abs() < 1e-3, "burned {burned:e}");
 }
 
 #[test]
