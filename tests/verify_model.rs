@@ -1,13 +1,15 @@
-//! The solver as a whole against solutions known in advance: smoke filling, pressures of leaky and sealed rooms, rest, and a
+//! The solver as a whole against solutions known in advance: a free curve in
+//! clean air, smoke filling, pressures of leaky and sealed rooms, rest, and a
 //! fire that stands in its own smoke.
 
-#![allow(clippy::unwrap_used, clippy::print_stdout)]
+#![allow(clippy::print_stdout, clippy::unwrap_used)]
 
 mod common;
 
-use common::{burner, door, gap, lining, methane, plan, room};
+use common::{burner, door, gap, lining, methane, plan, polyurethane, room};
+use doorglow::physics::growth::{FAST, t_squared};
 use doorglow::physics::hand::smoke_layer_height;
-use doorglow::plan::{Burning, Lining, Plan, PlumeModel};
+use doorglow::plan::{Burning, Curve, FuelId, Item, Lining, Plan, PlumeModel, RoomId};
 use doorglow::record::{Ended, Quantity, Record, Subject};
 
 const HALL: Subject = Subject::Room(0);
@@ -57,6 +59,84 @@ fn mirror() -> Lining {
     let mut mirror = lining(0.05, 1e-3, 50.0, 1000.0);
     mirror.emissivity = 1e-6;
     mirror
+}
+
+/// A fast fire in a hall with wide openings down to the floor, so high that
+/// its flame never breathes smoke; radiation from around it switched off.
+fn free_burning() -> Plan {
+    let board = lining(0.0125, 0.16, 790.0, 900.0);
+    let hall = room("hall", 20.0, 20.0, 8.0, &board);
+    let openings = vec![
+        door("east", 0, None, 10.0, 6.0, true),
+        door("west", 0, None, 10.0, 6.0, true),
+    ];
+    let mut fuel = polyurethane();
+    fuel.doubling_flux = f64::INFINITY;
+    let item = Item {
+        name: "bed".into(),
+        room: RoomId(0),
+        fuel: FuelId(0),
+        mass: 1000.0,
+        burning: Burning::Growing(Curve::Growth {
+            alpha: FAST,
+            peak: 1.4e6,
+        }),
+        surface_height: 0.5,
+        gap_to_wall: None,
+        in_corner: false,
+        ignition: 0.0,
+        at: None,
+    };
+    let mut plan = plan(360.0, vec![hall], openings, vec![fuel], vec![item]);
+    // Nothing but clean air below the smoke.
+    plan.choices.downflow_factor = 0.0;
+    plan
+}
+
+/// Largest departure from the free curve after the first minute, as a share.
+fn departure(plan: &Plan) -> [f64; 2] {
+    let record = run(plan, 1.0);
+    let burned = record.get(Subject::Item(0), Quantity::Burned);
+    let given = record.get(Subject::Item(0), Quantity::GivenOff);
+    [burned, given].map(|history| {
+        record
+            .time
+            .iter()
+            .zip(history)
+            .filter(|(time, _)| **time >= 60.0)
+            .map(|(time, watts)| watts / t_squared(FAST, 1.4e6, *time) - 1.0)
+            .fold(0.0_f64, |a, b| if b.abs() > a.abs() { b } else { a })
+    })
+}
+
+#[test]
+fn verify_free_curve_in_clean_air_comes_back() {
+    let [burned, given] = departure(&free_burning());
+    println!("free curve: burned off by {burned:.2e}, given off by {given:.2e}");
+    assert!(given.abs() < 1e-3, "given off {given:e}");
+    assert!(burned.abs() < 1e-3, "burned {burned:e}");
+}
+
+#[test]
+fn verify_rate_as_given_comes_back() {
+    let mut plan = free_burning();
+    plan.items[0].burning = Burning::AsGiven(Curve::Table(vec![
+        (0.0, 0.0),
+        (100.0, 4e5),
+        (200.0, 1e6),
+        (300.0, 2e5),
+        (360.0, 2e5),
+    ]));
+    let record = run(&plan, 1.0);
+    for (time, expected) in [(50.0, 2e5), (150.0, 7e5), (250.0, 6e5), (340.0, 2e5)] {
+        for quantity in [Quantity::GivenOff, Quantity::Burned] {
+            let found = value(&record, Subject::Item(0), quantity, time);
+            assert!(
+                (found / expected - 1.0).abs() < 1e-3,
+                "{quantity:?} at {time}: {found}"
+            );
+        }
+    }
 }
 
 /// 12 m2 by 2.4 m with one low, wide opening, so that the pressure stays near

@@ -20,6 +20,11 @@ const TOLERANCE: f64 = 1e-9;
 /// Absolute floor of the balance: the volume rate of 1 kW of heat, m3/s.
 const FLOOR: f64 = 2.8e-3;
 
+/// Pressure that counts as none in the balance, Pa: hydrostatic pressures of
+/// some 100 Pa are known to about 1e-14 of themselves, which a wide opening
+/// turns into more flow than the floor.
+const PRESSURE_NOISE: f64 = 1e-13;
+
 /// Most iterations before the state is given up.
 const MOST_ITERATIONS: usize = 60;
 
@@ -555,10 +560,10 @@ impl Passage {
                 residual[room] += stream.lifted * up + stream.dragged * down;
             }
         }
-        self.add_slopes(layers, matrix, unknowns);
+        self.add_slopes(layers, scale, matrix, unknowns);
     }
 
-    fn add_slopes(&self, layers: &Layers, matrix: &mut [f64], unknowns: usize) {
+    fn add_slopes(&self, layers: &Layers, scale: &mut [f64], matrix: &mut [f64], unknowns: usize) {
         for band in self.bands.as_slice() {
             let direction = usize::from(!band.forward);
             let own = usize::from(band.from_upper);
@@ -571,6 +576,7 @@ impl Passage {
             let (from, to) = (self.rooms[direction], self.rooms[1 - direction]);
             for (row, change) in [(from, out), (to, gain)] {
                 let Some(row) = row else { continue };
+                scale[row] += change.abs() * PRESSURE_NOISE / TOLERANCE;
                 if let Some(first) = self.rooms[0] {
                     matrix[row * unknowns + first] += change;
                 }
