@@ -86,10 +86,22 @@ fn evidence_steady_door_with_draught_from_memory() {
     hold_to_the_steady_door(DRAUGHT);
 }
 
+/// Stands open: at the defaults the row's bands (10 % of the flows, 15 % of
+/// the rise) are missed, inflow 13 % and outflow 15 % low, rise 17 % high. The
+/// likely cause is the door's draught on the plume, which `plume_factor`
+/// carries; 1.5 as a default would miss the measured room series instead. This
+/// holds the departure where it is until the printed report has been read.
 #[test]
-#[ignore = "known departure: without the draught inflow is 13 % low, outflow 15 % low, rise 17 % high"]
-fn evidence_steady_door_without_draught_from_memory() {
-    hold_to_the_steady_door(1.0);
+fn evidence_steady_door_at_the_defaults_stands_open_from_memory() {
+    let found = steady_door(0.74, 62.9e3, 1.0);
+    println!(
+        "at the defaults: rise {:.0} K (100), in {:.3} (0.554), out {:.3} (0.571) kg/s",
+        found.rise, found.inflow, found.outflow
+    );
+    assert!((0.80..0.90).contains(&(found.inflow / 0.554)));
+    assert!((0.80..0.90).contains(&(found.outflow / 0.571)));
+    assert!((1.15..1.25).contains(&(found.rise / 100.0)));
+    assert!((found.neutral - 1.03).abs() < 0.08);
 }
 
 /// Width m, upper temperature °C, outflow kg/s: remembered with low confidence.

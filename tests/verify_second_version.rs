@@ -2,7 +2,6 @@
 //! from docs/method.md alone (`tests/reference/second_version/`).
 // Tables for `--nocapture`; helpers outside the test functions may unwrap.
 #![allow(clippy::print_stdout, clippy::unwrap_used)]
-#![allow(clippy::unwrap_used)]
 
 mod common;
 
