@@ -4,7 +4,7 @@
 
 use super::layers::Layers;
 use super::layout::{LOWER, UPPER};
-use super::pressure::Problem;
+use super::pressure::{PRESSURE_NOISE, Problem, TOLERANCE};
 use super::schedule::Stand;
 use crate::physics::exchange::horizontal;
 use crate::physics::fan::curve as fan_curve;
@@ -450,10 +450,10 @@ impl Passage {
                 residual[room] += stream.lifted * up + stream.dragged * down;
             }
         }
-        self.add_slopes(layers, matrix, unknowns);
+        self.add_slopes(layers, scale, matrix, unknowns);
     }
 
-    fn add_slopes(&self, layers: &Layers, matrix: &mut [f64], unknowns: usize) {
+    fn add_slopes(&self, layers: &Layers, scale: &mut [f64], matrix: &mut [f64], unknowns: usize) {
         for band in self.bands.as_slice() {
             let direction = usize::from(!band.forward);
             let own = usize::from(band.from_upper);
@@ -466,6 +466,7 @@ impl Passage {
             let (from, to) = (self.rooms[direction], self.rooms[1 - direction]);
             for (row, change) in [(from, out), (to, gain)] {
                 let Some(row) = row else { continue };
+                scale[row] += change.abs() * PRESSURE_NOISE / TOLERANCE;
                 if let Some(first) = self.rooms[0] {
                     matrix[row * unknowns + first] += change;
                 }

@@ -15,10 +15,15 @@ use crate::physics::opening_flow::REGULARISATION;
 use crate::plan::{Choices, Fan, Opening};
 
 /// Relative tolerance of the volume balance.
-const TOLERANCE: f64 = 1e-9;
+pub const TOLERANCE: f64 = 1e-9;
 
 /// Absolute floor of the balance: the volume rate of 1 kW of heat, m3/s.
 const FLOOR: f64 = 2.8e-3;
+
+/// Pressure that counts as none in the balance, Pa: hydrostatic pressures of
+/// some 100 Pa are known to about 1e-14 of themselves, which a wide opening
+/// turns into more flow than the floor.
+pub const PRESSURE_NOISE: f64 = 1e-13;
 
 /// Most iterations before the state is given up.
 const MOST_ITERATIONS: usize = 60;
