@@ -155,14 +155,14 @@ pub fn exchange_left(driven: f64, flooding: f64) -> f64 {
 /// Volume flow through an orifice and its slope with the pressure difference,
 /// m3/s and m3/s/Pa: `C A sqrt(2/rho) f(d)`, `f(d) = d/(d^2 + e^2)^(1/4)`, with
 /// the density of the side that gives, blended within the regularisation.
-fn orifice(scale: f64, dp: f64, density_below: f64, density_above: f64) -> (f64, f64) {
-    let s2 = dp * dp + REGULARISATION * REGULARISATION;
+fn orifice(scale: f64, dp: f64, e: f64, density_below: f64, density_above: f64) -> (f64, f64) {
+    let s2 = dp * dp + e * e;
     let s = s2.sqrt();
     let root = dp / s.sqrt();
     let root_slope = (1.0 - 0.5 * dp * dp / s2) / s.sqrt();
     let [below, above] = [density_below, density_above].map(|rho| (2.0 / rho).sqrt());
     let from_below = 0.5 * (1.0 + dp / s);
-    let turn = 0.5 * REGULARISATION * REGULARISATION / (s2 * s);
+    let turn = 0.5 * e * e / (s2 * s);
     let speed = below * from_below + above * (1.0 - from_below);
     let slope = root_slope * speed + root * turn * (below - above);
     (scale * root * speed, scale * slope.max(0.0))
@@ -188,10 +188,33 @@ pub fn horizontal(
     density_below: f64,
     density_above: f64,
 ) -> Horizontal {
+    horizontal_regularised(
+        area,
+        coefficient,
+        exchange_factor,
+        dp,
+        [density_below, density_above],
+        REGULARISATION,
+    )
+}
+
+/// [`horizontal`] with a difference `regularisation` (Pa, above zero) of its
+/// own, below which the driven flow is linear; `density` below and above.
+#[must_use]
+pub fn horizontal_regularised(
+    area: f64,
+    coefficient: f64,
+    exchange_factor: f64,
+    dp: f64,
+    density: [f64; 2],
+    regularisation: f64,
+) -> Horizontal {
+    let [density_below, density_above] = density;
     if !(area > 0.0 && density_below > 0.0 && density_above > 0.0) {
         return Horizontal::default();
     }
-    let (driven, slope) = orifice(coefficient * area, dp, density_below, density_above);
+    let scale = coefficient * area;
+    let (driven, slope) = orifice(scale, dp, regularisation, density_below, density_above);
     let factor = exchange_factor.max(0.0);
     let flooding = factor * flooding_flow(area, density_below, density_above);
     let still = factor * thin_exchange(area, density_below, density_above);

@@ -119,8 +119,7 @@ pub fn pane_rate(
     }
     let before = gas[0] + share_above.clamp(0.0, 1.0) * (gas[1] - gas[0]);
     let own = black(temperature);
-    let inside =
-        INSIDE_CONVECTION * (before - temperature) + pane.emissivity * (irradiation - own);
+    let inside = INSIDE_CONVECTION * (before - temperature) + pane.emissivity * (irradiation - own);
     let lost =
         OUTSIDE_CONVECTION * (temperature - outside) + pane.emissivity * (own - black(outside));
     (inside - lost) / capacity

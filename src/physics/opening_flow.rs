@@ -87,7 +87,8 @@ impl Bands {
             .sum()
     }
 
-    fn push(&mut self, band: Band) {
+    /// Adds a band above the last one; at most six.
+    pub fn push(&mut self, band: Band) {
         self.bands[self.count] = band;
         self.count += 1;
     }
