@@ -6,7 +6,7 @@ use super::layers::Layers;
 use super::layout::{LOWER, UPPER};
 use super::pressure::{PRESSURE_NOISE, Problem, TOLERANCE};
 use super::schedule::Stand;
-use crate::physics::exchange::horizontal;
+use crate::physics::exchange::horizontal_regularised;
 use crate::physics::fan::curve as fan_curve;
 use crate::physics::opening_flow::{Band, Bands, GRAVITY, REGULARISATION, Side, bands_regularised};
 use crate::physics::plume::buoyant_entrainment;
@@ -272,13 +272,13 @@ impl Passage {
         let area = self.stand.coefficient_width / opening.coefficient;
         let (low, high) = (below.density[UPPER], above.density[LOWER]);
         let difference = below.pressure_at(height) - above.pressure_at(height);
-        let flow = horizontal(
+        let flow = horizontal_regularised(
             area,
             opening.coefficient,
             opening.exchange_factor,
             difference,
-            low,
-            high,
+            [low, high],
+            self.regularisation,
         );
         let mut bands = Bands::default();
         let band = |forward: bool, flow: f64, slope: f64| Band {
