@@ -53,8 +53,10 @@ pub fn stretches(driver: &mut Driver<'_, '_>, state: &mut Vec<f64>, out: &mut Ou
             relative: plan.choices.tolerance,
             absolute: ABSOLUTE_SHARE * plan.choices.tolerance,
         };
+        if std::env::var("DBG").is_ok() { eprintln!("DBG {time:.6}..{end:.6} groups {:?} forced {:?}", driver.model.groups, driver.forced); }
         let solution = integrate(driver, &scale, &stretch, state);
         let (refusal, changed) = outcome(driver, &solution);
+        if std::env::var("DBG").is_ok() { eprintln!("DBG -> {:?} {:?} steps {} rej {} t {:.6} refusal {:?}", solution.outcome, changed, solution.steps, solution.rejections, solution.time, refusal); }
         out.work.steps += solution.steps;
         out.work.rejections += solution.rejections;
         out.stretch(driver, &solution, time);
