@@ -9,7 +9,9 @@ use super::layers::Layers;
 use super::layout::{LOWER, UPPER};
 use super::linear::solve_in_place;
 use super::schedule::Stand;
-use crate::physics::opening_flow::{Bands, GRAVITY, REGULARISATION, Side, bands_regularised};
+use crate::physics::opening_flow::{
+    Bands, GRAVITY, MOST_BANDS, REGULARISATION, Side, bands_regularised,
+};
 use crate::physics::plume::buoyant_entrainment;
 use crate::physics::smooth::smoothstep;
 use crate::plan::{Choices, Opening, Space};
@@ -24,6 +26,11 @@ const FLOOR: f64 = 2.8e-3;
 /// some 100 Pa are known to about 1e-14 of themselves, which a wide opening
 /// turns into more flow than the floor.
 const PRESSURE_NOISE: f64 = 1e-13;
+
+/// Relative noise of a pressure difference against the pressures, some units
+/// in the last place: wide openings between rooms at some kPa turn it into
+/// flows that no search can settle.
+const NOISE: f64 = 8.0 * f64::EPSILON;
 
 /// Most iterations before the state is given up.
 const MOST_ITERATIONS: usize = 60;
@@ -85,6 +92,17 @@ pub struct Passage {
     deposit: [[f64; 2]; 2],
     /// Difference below which the orifice law is linear, Pa.
     regularisation: f64,
+    /// Where the flow of each band comes from and goes.
+    parts: [Part; MOST_BANDS],
+}
+
+/// How the flow of a band is split.
+#[derive(Debug, Clone, Copy, Default)]
+struct Part {
+    /// Share drawn from each layer of the source.
+    drawn: [f64; 2],
+    /// Of that, the share that goes to the upper layer of the destination.
+    raised: [f64; 2],
 }
 
 impl Passage {
@@ -171,6 +189,9 @@ pub struct Balance {
     internal: Vec<[f64; 2]>,
     residual: Vec<f64>,
     scale: Vec<f64>,
+    /// Residuals that count as none, now and at the start of a step.
+    allowed: Vec<f64>,
+    held: Vec<f64>,
     trial: Vec<f64>,
     matrix: Vec<f64>,
     step: Vec<f64>,
@@ -210,6 +231,8 @@ impl Balance {
             internal: vec![[0.0; 2]; n],
             residual: vec![0.0; 2 * n],
             scale: vec![0.0; 2 * n],
+            allowed: vec![0.0; 2 * n],
+            held: vec![0.0; 2 * n],
             trial: vec![0.0; 2 * n],
             matrix: vec![0.0; 4 * n * n],
             step: vec![0.0; 2 * n],
@@ -240,6 +263,7 @@ impl Balance {
         self.prepare(problem);
         let unknowns = self.rooms + problem.groups.len();
         self.trial.copy_from_slice(&self.solution);
+        self.shift_to_means(problem);
         let mut norm = self.evaluate(problem);
         for _ in 0..MOST_ITERATIONS {
             if norm <= 1.0 {
@@ -264,17 +288,32 @@ impl Balance {
         Err(NoBalance)
     }
 
+    /// Starts the rooms of tight groups from pressures whose mean is right.
+    fn shift_to_means(&mut self, problem: &Problem<'_>) {
+        for (group, pressure) in problem.groups.iter().zip(problem.group_pressure) {
+            let volume = |r: &usize| problem.building.rooms[*r].volume;
+            let whole: f64 = group.rooms.iter().map(volume).sum();
+            let moment: f64 = group.rooms.iter().map(|r| volume(r) * self.trial[*r]).sum();
+            for &room in &group.rooms {
+                self.trial[room] += pressure - moment / whole;
+            }
+        }
+    }
+
     /// Takes the Newton step from the solution, halved until the residual
     /// falls; gives the new residual.
     fn damped_step(&mut self, problem: &Problem<'_>, before: f64, unknowns: usize) -> f64 {
         let mut factor = 1.0;
         let mut norm = f64::INFINITY;
+        // One measure for the whole search: with the flows of each trial in it,
+        // a step that lowers residual and flows alike would look like none.
+        self.held.copy_from_slice(&self.allowed);
         for _ in 0..30 {
             for i in 0..unknowns {
                 self.trial[i] = self.solution[i] + factor * self.step[i];
             }
             norm = self.evaluate(problem);
-            if norm < before || norm <= 1.0 {
+            if norm <= 1.0 || largest(&self.residual[..unknowns], &self.held) < before {
                 break;
             }
             factor *= 0.5;
@@ -372,11 +411,13 @@ impl Balance {
             );
         }
         self.groups(problem, unknowns);
-        self.residual[..unknowns]
-            .iter()
-            .zip(&self.scale)
-            .map(|(residual, scale)| residual.abs() / (TOLERANCE * scale))
-            .fold(0.0, f64::max)
+        for i in 0..unknowns {
+            // What the last digits of the pressures make of the flows.
+            let known = NOISE * self.trial[i].abs() + PRESSURE_NOISE;
+            let noise = known * self.matrix[i * unknowns + i].abs();
+            self.allowed[i] = TOLERANCE * self.scale[i] + noise;
+        }
+        largest(&self.residual[..unknowns], &self.allowed)
     }
 
     /// Compression of tight groups and the condition that ties their
@@ -402,6 +443,18 @@ impl Balance {
             self.scale[at] = 1.0 + problem.group_pressure[g].abs();
         }
     }
+}
+
+/// Largest residual over what is allowed; not a number counts as infinite.
+fn largest(residual: &[f64], allowed: &[f64]) -> f64 {
+    residual
+        .iter()
+        .zip(allowed)
+        .map(|(residual, allowed)| residual.abs() / allowed)
+        .fold(
+            0.0,
+            |a, b| if b.is_nan() { f64::INFINITY } else { a.max(b) },
+        )
 }
 
 impl Passage {
@@ -465,7 +518,7 @@ impl Passage {
         // Rising and falling parts: flow, heat over the layer they pass, and
         // flow times height.
         let (mut rising, mut falling) = ([0.0; 3], [0.0; 3]);
-        for band in self.bands.as_slice() {
+        for (band, part) in self.bands.as_slice().iter().zip(&mut self.parts) {
             if band.forward != (direction == 0) {
                 continue;
             }
@@ -475,21 +528,26 @@ impl Passage {
                 .clamp(0.0, 1.0);
             let own = usize::from(band.from_upper);
             let weight = layers[source[own]].available;
-            for (k, flow) in [
-                (own, band.flow * weight),
-                (1 - own, band.flow * (1.0 - weight)),
-            ] {
+            part.drawn[own] = weight;
+            part.drawn[1 - own] = 1.0 - weight;
+            for (k, flow) in part
+                .drawn
+                .map(|share| share * band.flow)
+                .into_iter()
+                .enumerate()
+            {
                 if !inside {
                     stream.flow[k][LOWER] += flow;
                     continue;
                 }
+                let deposit = self.deposit[direction][k];
                 let jet = (1.0 - leak) * flow;
-                let up = jet * self.deposit[direction][k];
+                let up = jet * deposit;
                 // Gas from gaps goes in at its height, but hot gas rises.
-                let settles = (1.0 - by_height) * (1.0 - self.deposit[direction][k]);
-                let share = leak * (1.0 - settles) * flow;
-                stream.flow[k][UPPER] += up + share;
-                stream.flow[k][LOWER] += flow - up - share;
+                let settled = 1.0 - (1.0 - by_height) * (1.0 - deposit);
+                part.raised[k] = (1.0 - leak) * deposit + leak * settled;
+                stream.flow[k][UPPER] += flow * part.raised[k];
+                stream.flow[k][LOWER] += flow * (1.0 - part.raised[k]);
                 let gas = &layers[source[k]];
                 let warmer = gas.temperature - layers[into[LOWER]].temperature;
                 let cooler = layers[into[UPPER]].temperature - gas.temperature;
@@ -560,23 +618,29 @@ impl Passage {
                 residual[room] += stream.lifted * up + stream.dragged * down;
             }
         }
-        self.add_slopes(layers, scale, matrix, unknowns);
+        self.add_slopes(layers, matrix, unknowns);
     }
 
-    fn add_slopes(&self, layers: &Layers, scale: &mut [f64], matrix: &mut [f64], unknowns: usize) {
-        for band in self.bands.as_slice() {
+    fn add_slopes(&self, layers: &Layers, matrix: &mut [f64], unknowns: usize) {
+        for (band, part) in self.bands.as_slice().iter().zip(&self.parts) {
             let direction = usize::from(!band.forward);
-            let own = usize::from(band.from_upper);
+            let source = self.source(direction);
             // Change of the volume balances with the pressure of the first side.
-            let sign = if band.forward { 1.0 } else { -1.0 };
-            let out = -sign * band.slope / layers.layers[self.source(direction)[own]].density;
-            let share = self.deposit[direction][own];
-            let growth = self.growth[direction][own];
-            let gain = sign * band.slope * (growth[0] * (1.0 - share) + growth[1] * share);
+            let slope = if band.forward {
+                band.slope
+            } else {
+                -band.slope
+            };
+            let (mut out, mut gain) = (0.0, 0.0);
+            for k in 0..2 {
+                let growth = self.growth[direction][k];
+                let raised = part.raised[k];
+                out -= slope * part.drawn[k] / layers.layers[source[k]].density;
+                gain += slope * part.drawn[k] * (growth[0] * (1.0 - raised) + growth[1] * raised);
+            }
             let (from, to) = (self.rooms[direction], self.rooms[1 - direction]);
             for (row, change) in [(from, out), (to, gain)] {
                 let Some(row) = row else { continue };
-                scale[row] += change.abs() * PRESSURE_NOISE / TOLERANCE;
                 if let Some(first) = self.rooms[0] {
                     matrix[row * unknowns + first] += change;
                 }
