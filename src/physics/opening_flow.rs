@@ -58,10 +58,13 @@ pub struct Band {
     pub peak_difference: f64,
 }
 
+/// Most bands of an opening: three stretches, each cut once.
+pub const MOST_BANDS: usize = 6;
+
 /// The bands of an opening: at most three stretches, each cut once.
 #[derive(Debug, Clone, Copy, Default)]
 pub struct Bands {
-    bands: [Band; 6],
+    bands: [Band; MOST_BANDS],
     count: usize,
 }
 

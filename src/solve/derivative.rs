@@ -108,9 +108,9 @@ impl<'a> Model<'a> {
         }
     }
 
-    /// Mean gauge pressure of a tight group in the last evaluation, Pa.
-    pub fn group_pressure(&self, group: usize) -> f64 {
-        self.group_pressure.get(group).copied().unwrap_or(0.0)
+    /// Tight group of a room.
+    pub fn group_of(&self, room: usize) -> Option<usize> {
+        self.groups.iter().position(|g| g.rooms.contains(&room))
     }
 
     /// What the heat functions need to see.

@@ -1,5 +1,6 @@
-//! The model behind the integrator's door, and which rooms it holds at a
-//! dynamic pressure of their own because a quasi-steady one would be too high.
+//! The model behind the integrator's door, and which openings it takes for
+//! tight, so that the rooms behind them have a dynamic pressure of their own,
+//! because a quasi-steady difference across them would be too high.
 
 use super::derivative::{Model, Refusal};
 use super::groups::{OVERPRESSURE, RELEASE};
@@ -10,6 +11,9 @@ use super::triggers::Triggers;
 /// jumps there is seen from inside.
 const INSIDE: f64 = 1e-9;
 
+/// Rate of a difference (Pa/s) so slow that it is as good as quasi-steady.
+const SLOW: f64 = 20.0;
+
 /// The model with what the run needs to know about it.
 pub struct Driver<'a, 'w> {
     /// The model.
@@ -18,8 +22,8 @@ pub struct Driver<'a, 'w> {
     pub evaluations: u64,
     /// The user stopped the run.
     pub interrupted: bool,
-    /// Rooms made tight for their pressure.
-    pub forced: Vec<bool>,
+    /// Openings taken for tight for the difference across them.
+    pub cut: Vec<bool>,
     /// Changes that wait for a condition.
     pub triggers: Triggers,
     /// The last accepted step passed the level of a trigger.
@@ -31,11 +35,11 @@ pub struct Driver<'a, 'w> {
 impl<'a, 'w> Driver<'a, 'w> {
     /// A driver at the start of a run.
     pub fn new(model: Model<'a>, watch: &'w mut dyn FnMut(f64) -> bool) -> Self {
-        let rooms = model.building.rooms.len();
+        let openings = model.plan.openings.len();
         Self {
             evaluations: 0,
             interrupted: false,
-            forced: vec![false; rooms],
+            cut: vec![false; openings],
             triggers: Triggers::new(model.plan.triggers.len()),
             triggered: false,
             model,
@@ -59,58 +63,90 @@ impl<'a, 'w> Driver<'a, 'w> {
         self.model.evaluate(time.clamp(start, end), y, dy)
     }
 
-    /// Mean pressure of a room's tight group, Pa, zero outside of them.
-    fn mean(&self, room: usize) -> f64 {
-        let groups = &self.model.groups;
-        let group = groups.iter().position(|g| g.rooms.contains(&room));
-        group.map_or(0.0, |g| self.model.group_pressure(g))
+    /// Pressure difference across an opening by the given room pressures, and
+    /// its rate as far as it is dynamic, when there is a way through.
+    fn difference(&self, opening: usize, pressure: impl Fn(usize) -> f64) -> Option<(f64, f64)> {
+        let passage = &self.model.balance.passages[opening];
+        let rate = |room| {
+            let group = self.model.group_of(room);
+            group.map_or(0.0, |g| self.model.balance.group_rate(g))
+        };
+        let [first, second] = passage.rooms().map(|room| {
+            let pressure = room.map_or(0.0, &pressure);
+            (pressure, room.map_or(0.0, rate))
+        });
+        let way = passage.stand.coefficient_width > 0.0;
+        way.then_some((first.0 - second.0, first.1 - second.1))
     }
 
-    fn strained(&self, room: usize) -> bool {
-        let strain = self.model.balance.pressure(room) - self.mean(room);
-        strain.abs() > OVERPRESSURE && !self.forced[room]
+    /// True when both sides of an opening share one mean pressure, that of a
+    /// tight group or the outside's, so that its difference is quasi-steady.
+    fn quasi_steady(&self, opening: usize) -> bool {
+        let rooms = self.model.balance.passages[opening].rooms();
+        let [first, second] = rooms.map(|room| room.and_then(|r| self.model.group_of(r)));
+        first == second
     }
 
-    /// True when a group with rooms made tight is nearly even with the outside
-    /// and still falling.
-    fn relieved(&self, group: usize) -> bool {
-        let model = &self.model;
-        let pressure = model.group_pressure(group);
-        pressure.abs() < RELEASE
-            && pressure * model.balance.group_rate(group) < 0.0
-            && model.groups[group].rooms.iter().any(|r| self.forced[*r])
+    /// True when an opening that is not cut has too high a quasi-steady
+    /// difference by the given pressures.
+    fn strained(&self, opening: usize, pressure: impl Fn(usize) -> f64) -> bool {
+        !self.cut[opening]
+            && self.quasi_steady(opening)
+            && self
+                .difference(opening, pressure)
+                .is_some_and(|(p, _)| p.is_nan() || p.abs() > OVERPRESSURE)
     }
 
-    /// After the last evaluation: makes rooms at too high a quasi-steady
-    /// pressure tight, and lets go of those that have come down. True when
-    /// something changed.
+    /// True when the difference across a cut opening is small again and will
+    /// stay so, or when it is shut.
+    fn relieved(&self, opening: usize) -> bool {
+        let pressure = |room| self.model.balance.pressure(room);
+        self.cut[opening]
+            && self
+                .difference(opening, pressure)
+                .is_none_or(|(p, rate)| p.abs() < RELEASE && (p * rate < 0.0 || rate.abs() < SLOW))
+    }
+
+    /// After the last evaluation: cuts openings across which the quasi-steady
+    /// difference is too high, and lets go of those where it is over. True
+    /// when something changed.
     pub fn adapt(&mut self) -> bool {
-        let before = self.forced.clone();
-        for group in 0..self.model.groups.len() {
-            if self.relieved(group) {
-                for &room in &self.model.groups[group].rooms {
-                    self.forced[room] = false;
-                }
-            }
+        let relieved: Vec<bool> = (0..self.cut.len()).map(|o| self.relieved(o)).collect();
+        let mut changed = self.adapt_up();
+        for (cut, relieved) in self.cut.iter_mut().zip(relieved) {
+            changed |= relieved;
+            *cut &= !relieved;
         }
-        for room in 0..before.len() {
-            self.forced[room] |= !before[room] && self.strained(room);
-        }
-        self.forced != before
+        changed
     }
 
-    /// After a refusal for want of balance: makes the rooms tight at which the
+    /// As [`Driver::adapt`], letting none go.
+    pub fn adapt_up(&mut self) -> bool {
+        let pressure = |room| self.model.balance.pressure(room);
+        let strained: Vec<bool> = (0..self.cut.len())
+            .map(|o| self.strained(o, pressure))
+            .collect();
+        self.cut_also(&strained)
+    }
+
+    /// After a refusal for want of balance: cuts the openings across which the
     /// search for it ran away. True when something changed.
     pub fn adapt_to_refusal(&mut self) -> bool {
         if self.model.refusal != Some(Refusal::Pressure) {
             return false;
         }
-        let before = self.forced.clone();
-        for room in 0..before.len() {
-            let strain = self.model.balance.tried(room) - self.mean(room);
-            self.forced[room] |= strain.is_nan() || strain.abs() > OVERPRESSURE;
+        let tried = |room| self.model.balance.tried(room);
+        let strained: Vec<bool> = (0..self.cut.len())
+            .map(|o| self.strained(o, tried))
+            .collect();
+        self.cut_also(&strained)
+    }
+
+    fn cut_also(&mut self, also: &[bool]) -> bool {
+        for (cut, also) in self.cut.iter_mut().zip(also) {
+            *cut |= also;
         }
-        self.forced != before
+        also.iter().any(|also| *also)
     }
 }
 
@@ -125,7 +161,8 @@ impl Equations for Driver<'_, '_> {
         self.triggered = self.triggers.passed(&self.model, time, y).is_some();
         self.interrupted
             || self.triggered
-            || (0..self.forced.len()).any(|room| self.strained(room))
-            || (0..self.model.groups.len()).any(|group| self.relieved(group))
+            || (0..self.cut.len()).any(|o| {
+                self.relieved(o) || self.strained(o, |room| self.model.balance.pressure(room))
+            })
     }
 }

@@ -14,35 +14,27 @@ use crate::plan::{Opening, Plan, Space};
 /// way out of it is tight, 1/m (the quasi-steady error passes 1 K near here).
 const TIGHT: f64 = 2e-5;
 
-/// The same for a room whose quasi-steady pressure was found too high: a
-/// narrow door does not join it to the next room, 1/m.
-const TIGHT_FORCED: f64 = 1e-2;
-
 /// Ratio of heat capacities for evening out, air.
 const GAMMA: f64 = 1.4;
 
-/// Quasi-steady pressure difference at which a room is made tight, Pa.
+/// Quasi-steady pressure difference across an opening at which it is taken for
+/// tight whatever its area, Pa.
 pub const OVERPRESSURE: f64 = 2000.0;
 
-/// Pressure of a room made tight at which it is let go again, Pa.
+/// Pressure difference at which that ends, Pa.
 pub const RELEASE: f64 = 500.0;
 
 /// Rooms joined by openings wide enough for a quasi-steady difference, each
 /// list rising, in the order of first rooms.
-fn joined(plan: &Plan, building: &Building, stands: &[Stand], forced: &[bool]) -> Vec<Vec<usize>> {
+fn joined(plan: &Plan, building: &Building, stands: &[Stand], cut: &[bool]) -> Vec<Vec<usize>> {
     let n = plan.rooms.len();
     let mut label: Vec<usize> = (0..n).collect();
-    for (opening, stand) in plan.openings.iter().zip(stands) {
+    for ((opening, stand), cut) in plan.openings.iter().zip(stands).zip(cut) {
         let (Space::Room(a), Space::Room(b)) = (opening.from, opening.to) else {
             continue;
         };
-        let limit = if forced[a.0] || forced[b.0] {
-            TIGHT_FORCED
-        } else {
-            TIGHT
-        };
         let volume = building.rooms[a.0].volume.min(building.rooms[b.0].volume);
-        if coefficient_area(opening, stand) >= limit * volume {
+        if !cut && coefficient_area(opening, stand) >= TIGHT * volume {
             let (keep, drop) = (label[a.0].min(label[b.0]), label[a.0].max(label[b.0]));
             label
                 .iter_mut()
@@ -56,14 +48,9 @@ fn joined(plan: &Plan, building: &Building, stands: &[Stand], forced: &[bool]) -
         .collect()
 }
 
-/// Tight groups of a stretch; `forced` rooms make their group tight.
-pub fn tight(
-    plan: &Plan,
-    building: &Building,
-    stands: &[Stand],
-    forced: &[bool],
-) -> Vec<TightGroup> {
-    joined(plan, building, stands, forced)
+/// Tight groups of a stretch; openings that are `cut` count as tight.
+pub fn tight(plan: &Plan, building: &Building, stands: &[Stand], cut: &[bool]) -> Vec<TightGroup> {
+    joined(plan, building, stands, cut)
         .into_iter()
         .filter(|rooms| {
             let volume: f64 = rooms.iter().map(|r| building.rooms[*r].volume).sum();
@@ -71,10 +58,11 @@ pub fn tight(
                 .openings
                 .iter()
                 .zip(stands)
-                .filter(|(o, _)| leads_out(o, rooms))
-                .map(|(o, s)| coefficient_area(o, s))
+                .zip(cut)
+                .filter(|((o, _), cut)| !**cut && leads_out(o, rooms))
+                .map(|((o, s), _)| coefficient_area(o, s))
                 .sum();
-            way_out < TIGHT * volume || rooms.iter().any(|r| forced[*r])
+            way_out < TIGHT * volume
         })
         .map(|rooms| TightGroup { rooms })
         .collect()

@@ -4,11 +4,13 @@
 
 use super::layers::Layers;
 use super::layout::{LOWER, UPPER};
-use super::pressure::{PRESSURE_NOISE, Problem, TOLERANCE};
+use super::pressure::Problem;
 use super::schedule::Stand;
 use crate::physics::exchange::horizontal_regularised;
 use crate::physics::fan::curve as fan_curve;
-use crate::physics::opening_flow::{Band, Bands, GRAVITY, REGULARISATION, Side, bands_regularised};
+use crate::physics::opening_flow::{
+    Band, Bands, GRAVITY, MOST_BANDS, REGULARISATION, Side, bands_regularised,
+};
 use crate::physics::plume::buoyant_entrainment;
 use crate::physics::smooth::smoothstep;
 use crate::plan::{Fan, FanKind, Opening, Space};
@@ -86,6 +88,17 @@ pub struct Passage {
     deposit: [[f64; 2]; 2],
     /// Difference below which the orifice law is linear, Pa.
     pub regularisation: f64,
+    /// Where the flow of each band comes from and goes.
+    parts: [Part; MOST_BANDS],
+}
+
+/// How the flow of a band is split.
+#[derive(Debug, Clone, Copy, Default)]
+struct Part {
+    /// Share drawn from each layer of the source.
+    drawn: [f64; 2],
+    /// Of that, the share that goes to the upper layer of the destination.
+    raised: [f64; 2],
 }
 
 impl Passage {
@@ -129,6 +142,7 @@ impl Passage {
             growth: Default::default(),
             deposit: Default::default(),
             regularisation: REGULARISATION,
+            parts: Default::default(),
         }
     }
 
@@ -355,7 +369,7 @@ impl Passage {
         // Rising and falling parts: flow, heat over the layer they pass, and
         // flow times height.
         let (mut rising, mut falling) = ([0.0; 3], [0.0; 3]);
-        for band in self.bands.as_slice() {
+        for (band, part) in self.bands.as_slice().iter().zip(&mut self.parts) {
             if band.forward != (direction == 0) {
                 continue;
             }
@@ -365,21 +379,26 @@ impl Passage {
                 .clamp(0.0, 1.0);
             let own = usize::from(band.from_upper);
             let weight = layers[source[own]].available;
-            for (k, flow) in [
-                (own, band.flow * weight),
-                (1 - own, band.flow * (1.0 - weight)),
-            ] {
+            part.drawn[own] = weight;
+            part.drawn[1 - own] = 1.0 - weight;
+            for (k, flow) in part
+                .drawn
+                .map(|share| share * band.flow)
+                .into_iter()
+                .enumerate()
+            {
                 if !inside {
                     stream.flow[k][LOWER] += flow;
                     continue;
                 }
+                let deposit = self.deposit[direction][k];
                 let jet = (1.0 - leak) * flow;
-                let up = jet * self.deposit[direction][k];
+                let up = jet * deposit;
                 // Gas from gaps goes in at its height, but hot gas rises.
-                let settles = (1.0 - by_height) * (1.0 - self.deposit[direction][k]);
-                let share = leak * (1.0 - settles) * flow;
-                stream.flow[k][UPPER] += up + share;
-                stream.flow[k][LOWER] += flow - up - share;
+                let settled = 1.0 - (1.0 - by_height) * (1.0 - deposit);
+                part.raised[k] = (1.0 - leak) * deposit + leak * settled;
+                stream.flow[k][UPPER] += flow * part.raised[k];
+                stream.flow[k][LOWER] += flow * (1.0 - part.raised[k]);
                 let gas = &layers[source[k]];
                 let warmer = gas.temperature - layers[into[LOWER]].temperature;
                 let cooler = layers[into[UPPER]].temperature - gas.temperature;
@@ -450,23 +469,29 @@ impl Passage {
                 residual[room] += stream.lifted * up + stream.dragged * down;
             }
         }
-        self.add_slopes(layers, scale, matrix, unknowns);
+        self.add_slopes(layers, matrix, unknowns);
     }
 
-    fn add_slopes(&self, layers: &Layers, scale: &mut [f64], matrix: &mut [f64], unknowns: usize) {
-        for band in self.bands.as_slice() {
+    fn add_slopes(&self, layers: &Layers, matrix: &mut [f64], unknowns: usize) {
+        for (band, part) in self.bands.as_slice().iter().zip(&self.parts) {
             let direction = usize::from(!band.forward);
-            let own = usize::from(band.from_upper);
+            let source = self.source(direction);
             // Change of the volume balances with the pressure of the first side.
-            let sign = if band.forward { 1.0 } else { -1.0 };
-            let out = -sign * band.slope / layers.layers[self.source(direction)[own]].density;
-            let share = self.deposit[direction][own];
-            let growth = self.growth[direction][own];
-            let gain = sign * band.slope * (growth[0] * (1.0 - share) + growth[1] * share);
+            let slope = if band.forward {
+                band.slope
+            } else {
+                -band.slope
+            };
+            let (mut out, mut gain) = (0.0, 0.0);
+            for k in 0..2 {
+                let growth = self.growth[direction][k];
+                let raised = part.raised[k];
+                out -= slope * part.drawn[k] / layers.layers[source[k]].density;
+                gain += slope * part.drawn[k] * (growth[0] * (1.0 - raised) + growth[1] * raised);
+            }
             let (from, to) = (self.rooms[direction], self.rooms[1 - direction]);
             for (row, change) in [(from, out), (to, gain)] {
                 let Some(row) = row else { continue };
-                scale[row] += change.abs() * PRESSURE_NOISE / TOLERANCE;
                 if let Some(first) = self.rooms[0] {
                     matrix[row * unknowns + first] += change;
                 }

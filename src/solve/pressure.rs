@@ -15,7 +15,7 @@ use crate::physics::opening_flow::REGULARISATION;
 use crate::plan::{Choices, Fan, Opening};
 
 /// Relative tolerance of the volume balance.
-pub const TOLERANCE: f64 = 1e-9;
+const TOLERANCE: f64 = 1e-9;
 
 /// Absolute floor of the balance: the volume rate of 1 kW of heat, m3/s.
 const FLOOR: f64 = 2.8e-3;
@@ -23,7 +23,12 @@ const FLOOR: f64 = 2.8e-3;
 /// Pressure that counts as none in the balance, Pa: hydrostatic pressures of
 /// some 100 Pa are known to about 1e-14 of themselves, which a wide opening
 /// turns into more flow than the floor.
-pub const PRESSURE_NOISE: f64 = 1e-13;
+const PRESSURE_NOISE: f64 = 1e-13;
+
+/// Relative noise of a pressure difference against the pressures, some units
+/// in the last place: wide openings between rooms at some kPa turn it into
+/// flows that no search can settle.
+const NOISE: f64 = 8.0 * f64::EPSILON;
 
 /// Most iterations before the state is given up.
 const MOST_ITERATIONS: usize = 60;
@@ -79,6 +84,9 @@ pub struct Balance {
     internal: Vec<[f64; 2]>,
     residual: Vec<f64>,
     scale: Vec<f64>,
+    /// Residuals that count as none, now and at the start of a step.
+    allowed: Vec<f64>,
+    held: Vec<f64>,
     trial: Vec<f64>,
     matrix: Vec<f64>,
     step: Vec<f64>,
@@ -126,6 +134,8 @@ impl Balance {
             internal: vec![[0.0; 2]; n],
             residual: vec![0.0; 2 * n],
             scale: vec![0.0; 2 * n],
+            allowed: vec![0.0; 2 * n],
+            held: vec![0.0; 2 * n],
             trial: vec![0.0; 2 * n],
             matrix: vec![0.0; 4 * n * n],
             step: vec![0.0; 2 * n],
@@ -156,6 +166,7 @@ impl Balance {
         self.prepare(problem);
         let unknowns = self.rooms + problem.groups.len();
         self.trial.copy_from_slice(&self.solution);
+        self.shift_to_means(problem);
         let mut norm = self.evaluate(problem);
         for _ in 0..MOST_ITERATIONS {
             if norm <= 1.0 {
@@ -180,17 +191,32 @@ impl Balance {
         Err(NoBalance)
     }
 
+    /// Starts the rooms of tight groups from pressures whose mean is right.
+    fn shift_to_means(&mut self, problem: &Problem<'_>) {
+        for (group, pressure) in problem.groups.iter().zip(problem.group_pressure) {
+            let volume = |r: &usize| problem.building.rooms[*r].volume;
+            let whole: f64 = group.rooms.iter().map(volume).sum();
+            let moment: f64 = group.rooms.iter().map(|r| volume(r) * self.trial[*r]).sum();
+            for &room in &group.rooms {
+                self.trial[room] += pressure - moment / whole;
+            }
+        }
+    }
+
     /// Takes the Newton step from the solution, halved until the residual
     /// falls; gives the new residual.
     fn damped_step(&mut self, problem: &Problem<'_>, before: f64, unknowns: usize) -> f64 {
         let mut factor = 1.0;
         let mut norm = f64::INFINITY;
+        // One measure for the whole search: with the flows of each trial in it,
+        // a step that lowers residual and flows alike would look like none.
+        self.held.copy_from_slice(&self.allowed);
         for _ in 0..30 {
             for i in 0..unknowns {
                 self.trial[i] = self.solution[i] + factor * self.step[i];
             }
             norm = self.evaluate(problem);
-            if norm < before || norm <= 1.0 {
+            if norm <= 1.0 || largest(&self.residual[..unknowns], &self.held) < before {
                 break;
             }
             factor *= 0.5;
@@ -289,11 +315,13 @@ impl Balance {
         }
         self.mix(problem);
         self.groups(problem, unknowns);
-        self.residual[..unknowns]
-            .iter()
-            .zip(&self.scale)
-            .map(|(residual, scale)| residual.abs() / (TOLERANCE * scale))
-            .fold(0.0, f64::max)
+        for i in 0..unknowns {
+            // What the last digits of the pressures make of the flows.
+            let known = NOISE * self.trial[i].abs() + PRESSURE_NOISE;
+            let noise = known * self.matrix[i * unknowns + i].abs();
+            self.allowed[i] = TOLERANCE * self.scale[i] + noise;
+        }
+        largest(&self.residual[..unknowns], &self.allowed)
     }
 
     /// Mixing of the layers by the momentum of what goes through a room.
@@ -367,4 +395,16 @@ impl Balance {
             self.scale[at] = 1.0 + problem.group_pressure[g].abs();
         }
     }
+}
+
+/// Largest residual over what is allowed; not a number counts as infinite.
+fn largest(residual: &[f64], allowed: &[f64]) -> f64 {
+    residual
+        .iter()
+        .zip(allowed)
+        .map(|(residual, allowed)| residual.abs() / allowed)
+        .fold(
+            0.0,
+            |a, b| if b.is_nan() { f64::INFINITY } else { a.max(b) },
+        )
 }

@@ -114,7 +114,7 @@ fn fire(driver: &mut Driver<'_, '_>, time: f64, y: &[f64]) {
     }
 }
 
-/// Why the last evaluation was refused, and whether other rooms are tight
+/// Why the last evaluation was refused, and whether other openings are cut
 /// from here on.
 fn outcome(driver: &mut Driver<'_, '_>, solution: &Solution) -> (Option<Refusal>, bool) {
     let refusal = driver.model.refusal;
@@ -131,10 +131,10 @@ fn outcome(driver: &mut Driver<'_, '_>, solution: &Solution) -> (Option<Refusal>
 fn begin(driver: &mut Driver<'_, '_>, state: &mut [f64], time: f64, landing: f64) -> f64 {
     let (plan, building) = (driver.model.plan, driver.model.building);
     let mut rates = vec![0.0; state.len()];
-    // Every pass makes at least one more room tight.
+    // Every pass cuts at least one more opening.
     loop {
         let schedule = &driver.model.schedule;
-        let (groups, end) = hold(plan, building, schedule, &driver.forced, time, landing);
+        let (groups, end) = hold(plan, building, schedule, &driver.cut, time, landing);
         let old = std::mem::take(&mut driver.model.groups);
         let model = &mut driver.model;
         settle(
@@ -147,15 +147,11 @@ fn begin(driver: &mut Driver<'_, '_>, state: &mut [f64], time: f64, landing: f64
         );
         driver.model.groups = groups;
         driver.keep_within(time, end);
-        let before = driver.forced.clone();
-        match driver.evaluate(time, state, &mut rates) {
-            Ok(()) => driver.adapt(),
+        let changed = match driver.evaluate(time, state, &mut rates) {
+            Ok(()) => driver.adapt_up(),
             Err(_) => driver.adapt_to_refusal(),
         };
-        for (forced, before) in driver.forced.iter_mut().zip(&before) {
-            *forced |= before;
-        }
-        if driver.forced == before {
+        if !changed {
             return end;
         }
     }
@@ -174,13 +170,13 @@ fn hold(
     plan: &Plan,
     building: &Building,
     schedule: &Schedule,
-    forced: &[bool],
+    cut: &[bool],
     start: f64,
     end: f64,
 ) -> (Vec<TightGroup>, f64) {
     let groups = |share: f64| {
         let time = start + share * (end - start);
-        tight(plan, building, &stands(plan, schedule, time), forced)
+        tight(plan, building, &stands(plan, schedule, time), cut)
     };
     let first = groups(RESOLUTION);
     let mut low = RESOLUTION;
