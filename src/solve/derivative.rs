@@ -25,6 +25,10 @@ const JET_FUEL: f64 = 2e-4;
 /// The same for oxygen.
 const JET_OXYGEN: f64 = 5e-3;
 
+/// Lit fuel leaving at which the whole release of the room begins to count for
+/// the flame outside, W (own choice).
+const FLAMES_OUTSIDE: f64 = 100e3;
+
 /// Time in which a room whose upper layer is denser than its lower one turns
 /// over, s (own choice).
 const OVERTURN: f64 = 10.0;
@@ -536,6 +540,24 @@ impl<'a> Model<'a> {
         self.items.iter().map(|i| i.burned).sum::<f64>()
             + self.in_layers.iter().sum::<f64>()
             + self.in_jets.iter().sum::<f64>()
+    }
+
+    /// Heat release that counts for the flame outside an opening, W: that of the
+    /// room behind it and of the lit fuel that leaves, once such fuel leaves.
+    pub fn release_behind(&self, opening: usize) -> f64 {
+        let outside = self.outside[opening];
+        let rooms = self.balance.passages[opening].rooms();
+        let (Some(room), true) = (rooms[0].or(rooms[1]), outside > 0.0) else {
+            return 0.0;
+        };
+        let items = self.items.iter().zip(&self.building.items);
+        let inside = items
+            .filter(|(_, source)| source.room == room)
+            .map(|(rates, _)| rates.burned)
+            .sum::<f64>()
+            + self.in_layers[room]
+            + self.in_jets[room];
+        outside + inside * outside / (outside + FLAMES_OUTSIDE)
     }
 
     /// Flow of outside air into the building, kg/s.

@@ -186,7 +186,7 @@ impl Observer {
         };
         self.put(s, Q::PaneTemperature, pane);
         let flame = external_flame::height_above_head(
-            model.outside[index],
+            model.release_behind(index),
             passage.stand.clear_width,
             opening.head - opening.sill,
         );
