@@ -1,6 +1,11 @@
 //! The fire physics: pure functions, one file per phenomenon, no state.
 
 pub mod cold_front;
+pub mod exchange;
+pub mod external_flame;
+pub mod fan;
+pub mod glass;
+pub mod mixing;
 pub mod combustion;
 pub mod conduction;
 pub mod emissivity;

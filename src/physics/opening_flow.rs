@@ -87,7 +87,7 @@ impl Bands {
             .sum()
     }
 
-    fn push(&mut self, band: Band) {
+    pub fn push(&mut self, band: Band) {
         self.bands[self.count] = band;
         self.count += 1;
     }
