@@ -20,7 +20,7 @@ use doorglow::record::{Ended, Quantity, Record, Subject};
 
 /// Conductivity of the walls, W/m/K, found by
 /// `evidence_wall_is_fixed_on_250_kw_centre_open`.
-const WALL_CONDUCTIVITY: f64 = 0.0591;
+const WALL_CONDUCTIVITY: f64 = 0.060;
 
 /// A setting with the door open: means of the last 60 s of burning.
 struct OpenDoor {

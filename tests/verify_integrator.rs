@@ -159,6 +159,7 @@ fn verify_integrator_never_reads_beyond_its_last_point() {
     for before in [-1.0, -1e-3] {
         assert_eq!(solution.at(before), None, "read at {before}");
     }
+    assert!(solution.at(f64::NAN).is_none());
 }
 
 #[test]
@@ -190,6 +191,21 @@ fn verify_integrator_works_in_scaled_variables() {
     let solution = integrate(&mut system, &scale, &how, &[1e9, 1e-3]);
     assert!((solution.state[0] / 1e9 / (-3.0_f64).exp() - 1.0).abs() < 1e-6);
     assert!((solution.state[1] / 1e-3 / (-6.0_f64).exp() - 1.0).abs() < 1e-5);
+}
+
+#[test]
+fn verify_integrator_starts_at_negative_times() {
+    let mut system = given(wavy);
+    let how = stretch(-3.0, 1.0, 1e-8);
+    let solution = integrate(&mut system, &[1.0], &how, &[exact(-3.0)]);
+    assert_eq!(solution.outcome, Outcome::Reached);
+    assert!((solution.state[0] - exact(1.0)).abs() < 1e-6);
+    for n in 0..=40 {
+        let time = -3.0 + 0.1 * f64::from(n);
+        assert!((solution.at(time).unwrap()[0] - exact(time)).abs() < 1e-6);
+    }
+    assert_eq!(solution.at(-3.1), None);
+    assert_eq!(system.times.last(), Some(&1.0));
 }
 
 #[test]
@@ -273,6 +289,24 @@ fn verify_integrator_stops_where_every_step_is_refused_and_keeps_the_rest() {
     assert!((solution.at(1.5).unwrap()[0] - 1.5).abs() < 1e-6);
     assert_eq!(solution.at(3.0), None);
     assert!(solution.steps > 0);
+}
+
+#[test]
+fn verify_integrator_fails_where_the_start_is_refused() {
+    // Every slope alike would have no error to be rejected by.
+    let mut system = given(|_, _: &[f64], dy: &mut [f64]| {
+        dy[0] = 1.0;
+        false
+    });
+    let solution = integrate(&mut system, &[1.0], &stretch(0.0, 5.0, 1e-6), &[2.0]);
+    assert!(
+        matches!(solution.outcome, Outcome::Failed(_)),
+        "{:?} with {:?}",
+        solution.outcome,
+        solution.state
+    );
+    assert_eq!(solution.time, 0.0);
+    assert_eq!(solution.state, vec![2.0]);
 }
 
 #[test]

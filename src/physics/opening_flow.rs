@@ -87,6 +87,7 @@ impl Bands {
             .sum()
     }
 
+    /// Adds a band above the last one; at most six.
     pub fn push(&mut self, band: Band) {
         self.bands[self.count] = band;
         self.count += 1;

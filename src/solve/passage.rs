@@ -4,7 +4,7 @@
 
 use super::layers::Layers;
 use super::layout::{LOWER, UPPER};
-use super::pressure::Problem;
+use super::pressure::{PRESSURE_NOISE, Problem, TOLERANCE};
 use super::schedule::Stand;
 use crate::physics::exchange::horizontal;
 use crate::physics::fan::curve as fan_curve;
@@ -20,6 +20,9 @@ const DEPOSIT_STEP: f64 = 10.0;
 /// Depth that stands for the band of a horizontal opening or a fan, m; only its
 /// place matters.
 const LYING_DEPTH: f64 = 1e-3;
+
+/// Area of the mouth of a duct, m2 (own choice; only its speed counts).
+const DUCT_MOUTH: f64 = 0.25;
 
 /// Band about the interface in which an intake draws from both layers, m (own
 /// choice).
@@ -134,6 +137,25 @@ impl Passage {
         match self.way {
             Way::Opening(_) => self.stand.coefficient_width <= 0.0,
             Way::Fan(_) => self.running <= 0.0,
+        }
+    }
+
+    /// Clear area, m2: of an opening, of the cone of a fan; of a duct that of a
+    /// mouth of a quarter of a square metre.
+    pub fn clear_area(&self, problem: &Problem<'_>) -> f64 {
+        let upright = |o: &Opening| self.stand.clear_width * (o.head - o.sill);
+        match self.way {
+            Way::Opening(o) if problem.openings[o].kind.is_horizontal() => {
+                let opening = &problem.openings[o];
+                opening.area * (self.stand.clear_width / opening.width).clamp(0.0, 1.0)
+            }
+            Way::Opening(o) => upright(&problem.openings[o]),
+            Way::Fan(f) => match problem.fans[f].kind {
+                FanKind::PositivePressure { opening, covers } => {
+                    covers * upright(&problem.openings[opening.0])
+                }
+                FanKind::Duct { .. } => DUCT_MOUTH,
+            },
         }
     }
 
@@ -428,10 +450,10 @@ impl Passage {
                 residual[room] += stream.lifted * up + stream.dragged * down;
             }
         }
-        self.add_slopes(layers, matrix, unknowns);
+        self.add_slopes(layers, scale, matrix, unknowns);
     }
 
-    fn add_slopes(&self, layers: &Layers, matrix: &mut [f64], unknowns: usize) {
+    fn add_slopes(&self, layers: &Layers, scale: &mut [f64], matrix: &mut [f64], unknowns: usize) {
         for band in self.bands.as_slice() {
             let direction = usize::from(!band.forward);
             let own = usize::from(band.from_upper);
@@ -444,6 +466,7 @@ impl Passage {
             let (from, to) = (self.rooms[direction], self.rooms[1 - direction]);
             for (row, change) in [(from, out), (to, gain)] {
                 let Some(row) = row else { continue };
+                scale[row] += change.abs() * PRESSURE_NOISE / TOLERANCE;
                 if let Some(first) = self.rooms[0] {
                     matrix[row * unknowns + first] += change;
                 }

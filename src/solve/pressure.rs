@@ -15,10 +15,15 @@ use crate::physics::opening_flow::REGULARISATION;
 use crate::plan::{Choices, Fan, Opening};
 
 /// Relative tolerance of the volume balance.
-const TOLERANCE: f64 = 1e-9;
+pub const TOLERANCE: f64 = 1e-9;
 
 /// Absolute floor of the balance: the volume rate of 1 kW of heat, m3/s.
 const FLOOR: f64 = 2.8e-3;
+
+/// Pressure that counts as none in the balance, Pa: hydrostatic pressures of
+/// some 100 Pa are known to about 1e-14 of themselves, which a wide opening
+/// turns into more flow than the floor.
+pub const PRESSURE_NOISE: f64 = 1e-13;
 
 /// Most iterations before the state is given up.
 const MOST_ITERATIONS: usize = 60;
@@ -45,8 +50,8 @@ pub struct NoBalance;
 /// Mixing of a room's layers by momentum.
 #[derive(Debug, Clone, Copy, Default)]
 pub struct Mixing {
-    /// Volume flow that comes into the room, m3/s.
-    pub through: f64,
+    /// What enters the room.
+    pub entering: mixing::Entering,
     /// How far the room is mixed, 0..1.
     pub share: f64,
     /// Volume that changes places each way, m3/s.
@@ -304,18 +309,32 @@ impl Balance {
                 let Some(room) = passage.rooms()[1 - direction] else {
                     continue;
                 };
-                let stream = &passage.streams[direction];
-                let source = passage.source(direction);
-                for (k, from) in source.into_iter().enumerate() {
-                    self.mixing[room].through +=
-                        stream.of_layer(k) / problem.layers.layers[from].density;
-                }
+                let volume = |direction: usize| -> f64 {
+                    let stream = &passage.streams[direction];
+                    let source = passage.source(direction).into_iter().enumerate();
+                    source
+                        .map(|(k, from)| {
+                            stream.of_layer(k) / problem.layers.layers[from].density
+                        })
+                        .sum()
+                };
+                let net = volume(direction) - volume(1 - direction);
+                self.mixing[room]
+                    .entering
+                    .add(net, passage.clear_area(problem));
             }
         }
         for room in 0..self.rooms {
             let hull = &problem.building.rooms[room];
-            let [low, up] = [2 * room + LOWER, 2 * room + UPPER].map(|k| &problem.layers.layers[k]);
-            let speed = self.mixing[room].through / (hull.width.min(hull.length) * hull.height);
+            let [low, up] =
+                [2 * room + LOWER, 2 * room + UPPER].map(|k| &problem.layers.layers[k]);
+            let entering = &self.mixing[room].entering;
+            let through = entering.flow();
+            if through <= 0.0 {
+                continue;
+            }
+            let section = hull.width.min(hull.length) * hull.height;
+            let speed = mixing::stirring_speed(through, section, entering.speed_squared());
             let richardson = mixing::richardson(low.density, up.density, hull.height, speed);
             let share = problem.choices.mixing_factor.min(1.0) * mixing::mixed_share(richardson);
             let exchange = low.available
@@ -323,7 +342,7 @@ impl Balance {
                 * mixing::exchange_rate(
                     low.volume.min(up.volume),
                     share,
-                    hull.width.max(hull.length) / speed.max(1e-3),
+                    hull.volume / through,
                 );
             self.mixing[room].share = share;
             self.mixing[room].exchange = exchange;

@@ -29,6 +29,13 @@ impl Track {
         }
     }
 
+    fn rate(&self, time: f64) -> f64 {
+        match self.moves.iter().rev().find(|m| m.start <= time) {
+            Some(m) if time < m.end => (m.to - m.from) / (m.end - m.start),
+            _ => 0.0,
+        }
+    }
+
     /// Begins to move; a move under way ends where it is.
     fn push(&mut self, time: f64, over: f64, to: f64) {
         let from = self.at(time);
@@ -140,6 +147,11 @@ impl Schedule {
             .collect();
         let jumps: Vec<f64> = known.into_iter().chain([time, end]).collect();
         self.landings = merge(&jumps, &kinks, self.end);
+    }
+
+    /// Rate at which an opening widens at a time, m/s.
+    pub fn widening(&self, opening: usize, time: f64) -> f64 {
+        self.openings[opening].rate(time)
     }
 
     /// Clear width of an opening at a time, m.

@@ -67,10 +67,12 @@ class Model:
         self.wall = Lining(case["walls"], room["behind"])
         self.floor = Lining(case["floor"], room["behind"])
         door = case["door"]
-        whole = self.perimeter * self.height
-        net = max(whole - door["width"] * (door["head"] - door["sill"]), .05 * whole)
-        self.strip_area = net / 4
+        step = self.height / 4
+        self.leaf = np.array([door["width"] * max(min(door["head"], (n + 1) * step) - max(door["sill"], n * step), 0.0)
+                              for n in range(4)])
+        self.bare = np.maximum(self.perimeter * step - self.leaf, .05 * self.perimeter * step)
         self.clear = lambda t: 0.0
+        self.strip_area = self.bare + self.leaf
         self.last_pressure = 0.0
         self.item0 = 15
         self.nodes0 = 20
@@ -156,8 +158,8 @@ class Model:
             total = sum(p[0] for p in parts)
             return (sum(p[0] * p[1] for p in parts) / total, sum(p[0] * p[2] for p in parts) / total, total)
 
-        upper = [(self.strip_area * s, 1 - wall_e, e) for s, e in zip(above, strips)]
-        lower = [(self.strip_area * (1 - s), 1 - wall_e, e) for s, e in zip(above, strips)]
+        upper = [(a * s, 1 - wall_e, e) for a, s, e in zip(self.strip_area, above, strips)]
+        lower = [(a * (1 - s), 1 - wall_e, e) for a, s, e in zip(self.strip_area, above, strips)]
         out_e = SIGMA * t_out**4
         upper += [(open_area_u, 0.0, out_e), (1e-9, 1.0, 0.0)]
         lower += [(open_area_w, 0.0, out_e), (1e-9, 1.0, 0.0)]
@@ -278,7 +280,7 @@ class Model:
         tau, m, flamed, ember, x_b = s[self.item0:self.item0 + 5]
         held = min(max(flamed, 0.0), 1.0)
         r = max(m, 0.0) / (.3 * self.mass0)
-        burnout = r / (1 + r**4)**.25
+        burnout = r / (1 + r**4)**.25 / ((1 / .3) / (1 + (1 / .3)**4)**.25)
         free = min(case["growth"] * tau * tau, case["peak"]) * burnout
         r_x = max(x_b, 0.0) / self.x_out[O2]
         z_s = case["surface_height"]
@@ -294,7 +296,7 @@ class Model:
         extra = x / (1 + (x / 1.5)**4)**.25
         over = q - fuel["critical_flux"]
         s_g = (max(over, 0.0) + SOFTNESS * log1p(exp(-abs(over) / SOFTNESS))) / fuel["doubling_flux"]
-        g_e = .02 * ember * x_b / (x_b + .03)
+        g_e = (1 - held) * .02 * max(ember, 0.0) * max(x_b, 0.0) / (max(x_b, 0.0) + .03)
         d_f = free * (held * (r_x**2 + extra) + (1 - held) * s_g * held / (held + .05))
         given = free * (held * (r_x**2 + extra) + (1 - held) * s_g + g_e)
         f0 = .005
@@ -321,6 +323,7 @@ class Model:
         u, lo, z = self.layers(s)
         surfaces = self.linings(s)
         clear = self.clear(t)
+        self.strip_area = self.bare + self.leaf * (1 - clear / self.case["door"]["width"])
         door = self.case["door"]
         open_above = clear * max(door["head"] - max(z, door["sill"]), 0.0)
         open_below = clear * (door["head"] - door["sill"]) - open_above
@@ -375,18 +378,18 @@ class Model:
         h_l -= self.floor_area * conv_f
         lining_rates.append(self.ceiling.rate(surfaces[0], rad_c + conv_c))
         wall_q = wall_area = wall_t = 0.0
-        for nodes, share in zip(surfaces[1:5], rad["above"]):
+        for nodes, share, area in zip(surfaces[1:5], rad["above"], self.strip_area):
             t_w = nodes[0]
             radiant = (share * rad["stretch_u"] * absorbed(self.wall.emissivity, g[1], t_w)
                        + (1 - share) * rad["stretch_w"] * absorbed(self.wall.emissivity, g[2], t_w))
             from_u = share * c_u * (u.t - t_w)
             from_l = (1 - share) * c_l * (lo.t - t_w)
-            gained += self.strip_area * radiant
-            h_u -= self.strip_area * from_u
-            h_l -= self.strip_area * from_l
-            wall_q += self.strip_area * from_u
-            wall_area += share * self.strip_area
-            wall_t += share * self.strip_area * t_w
+            gained += area * radiant
+            h_u -= area * from_u
+            h_l -= area * from_l
+            wall_q += area * from_u
+            wall_area += share * area
+            wall_t += share * area * t_w
             lining_rates.append(self.wall.rate(nodes, radiant + from_u + from_l))
         lining_rates.append(self.floor.rate(surfaces[5], rad_f + conv_f))
         gained += open_above * rad["stretch_u"] * (g[1] - rad["out_e"])
