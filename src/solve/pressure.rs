@@ -313,9 +313,7 @@ impl Balance {
                     let stream = &passage.streams[direction];
                     let source = passage.source(direction).into_iter().enumerate();
                     source
-                        .map(|(k, from)| {
-                            stream.of_layer(k) / problem.layers.layers[from].density
-                        })
+                        .map(|(k, from)| stream.of_layer(k) / problem.layers.layers[from].density)
                         .sum()
                 };
                 let net = volume(direction) - volume(1 - direction);
@@ -326,8 +324,7 @@ impl Balance {
         }
         for room in 0..self.rooms {
             let hull = &problem.building.rooms[room];
-            let [low, up] =
-                [2 * room + LOWER, 2 * room + UPPER].map(|k| &problem.layers.layers[k]);
+            let [low, up] = [2 * room + LOWER, 2 * room + UPPER].map(|k| &problem.layers.layers[k]);
             let entering = &self.mixing[room].entering;
             let through = entering.flow();
             if through <= 0.0 {
@@ -339,11 +336,7 @@ impl Balance {
             let share = problem.choices.mixing_factor.min(1.0) * mixing::mixed_share(richardson);
             let exchange = low.available
                 * up.available
-                * mixing::exchange_rate(
-                    low.volume.min(up.volume),
-                    share,
-                    hull.volume / through,
-                );
+                * mixing::exchange_rate(low.volume.min(up.volume), share, hull.volume / through);
             self.mixing[room].share = share;
             self.mixing[room].exchange = exchange;
             let [lifted, sunk] = self.internal[room];
