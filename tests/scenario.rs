@@ -202,13 +202,179 @@ at = "10 min"
 set = "door"
 to = "hose under the door"
 
+[tactic.calm]
+wind = { speed = "0 m/s" }
+holds = ["pane", "step"]
+start = { roof = "open" }
+
 [[action]]
 name = "first"
 at = "5 min"
 set = "door"
 to = "20 cm"
 
+[wind]
+speed = "20 mph"
+direction = "from the north-west"
+roof_coefficient = -0.5
+
+[facade.street]
+faces = "west"
+
+[facade.yard]
+faces = "90 °"
+pressure_coefficient = -0.35
+
+[room.attic]
+width = "3 m"
+length = "3.3 m"
+height = "2.1 m"
+floor_level = "2.6 m"
+
+[room.passage]
+width = "1.2 m"
+length = "7 m"
+height = "2.4 m"
+floor_level = "-20 cm"
+
+[room.passage_end]
+width = "7 m"
+length = "1.2 m"
+height = "2.3 m"
+
+[opening.stairs]
+kind = "stair"
+between = ["two", "attic"]
+area = "2.2 m2"
+
+[opening.trap]
+kind = "hatch"
+between = ["two", "attic"]
+width = "2 ft"
+length = "70 cm"
+position = "one third"
+gap = "0.001 m2"
+
+[opening.roof]
+kind = "hatch"
+between = ["attic", "open air"]
+area = "1.0 m2"
+
+[opening.border]
+kind = "division"
+between = ["passage", "passage_end"]
+
+[opening.step]
+between = ["two", "passage"]
+width = "0.8 m"
+sill = "0.1 m"
+head = "2.1 m"
+leaf = "hollow"
+gap = "smoke door"
+
+[opening.pane]
+kind = "window"
+between = ["Room 1", "open air"]
+width = "1.3 m"
+sill = "0.9 m"
+head = "2.0 m"
+glass = "double"
+facade = "street"
+falls_out = { layer = "500 °C", glass = "111.1 K", at = "25 min", fraction = "37 %", delay = "10 s" }
+
+[opening.own_pane]
+kind = "window"
+between = ["two", "open air"]
+width = "1.1 m"
+sill = "0.9 m"
+head = "2.0 m"
+glass = "leaded"
+wind_pressure = "12 Pa"
+
+[opening.skylight]
+kind = "window"
+between = ["attic", "open air"]
+width = "0.7 m"
+head = "1.0 m"
+glass = "single thin"
+falls_out = "by glass temperature"
+facade = "yard"
+
+[opening.back]
+between = ["passage_end", "open air"]
+width = "0.9 m"
+head = "2.0 m"
+facade = "yard"
+fails = "at 12 min"
+
+[glass.leaded]
+thickness = "2 mm"
+layer = "300 °C"
+
+[leakage.upstairs]
+rooms = ["attic", "passage"]
+air_changes = "5 per hour at 50 Pa"
+facade = "yard"
+
+[fan.blower]
+kind = "positive pressure"
+at = "back"
+free_flow = "7000 cfm"
+dead_end_pressure = "60 Pa"
+
+[fan.hood]
+kind = "extract"
+from = "two"
+free_flow = "300 m3/h"
+dead_end_pressure = "200 Pa"
+running = true
+
+[fan.freshener]
+kind = "supply"
+to = "two"
+outlet = "2 m"
+free_flow = "30 L/s"
+dead_end_pressure = "80 Pa"
+
+[fan.pipe]
+kind = "duct"
+from = "attic"
+to = "two"
+free_flow = "0.05 m3/s"
+dead_end_pressure = "0.2 in H2O"
+running = true
+
+[[action]]
+name = "fan on"
+at = "6 min"
+start = "blower"
+
+[[action]]
+name = "fan off"
+when = "Room 1 layer temperature > 300 °F"
+not_before = "7 min"
+delay = "20 s"
+stop = "blower"
+
+[[action]]
+name = "hatch"
+when = "attic smoke level < 4 ft"
+set = "roof"
+to = "half"
+because = "crew on the roof"
+
+[[action]]
+name = "shut up"
+when = "two oxygen < 15 %"
+shut = "door"
+
+[[action]]
+name = "fresh"
+when = "heat release > 1.5 MW"
+start = "freshener"
+
 [physics]
+mixing_factor = 0.5
 plume = "Heskestad"
 placement = "image"
 critical_flame_temperature = "1650 K"
@@ -230,7 +396,11 @@ fn verify_everything_loads_and_is_sorted() {
 
 #[test]
 fn verify_resolved_text_reads_back_as_the_same_plan() {
-    let mut plans = vec![load(EVERYTHING, None), load(LARCH_ROW, None)];
+    let mut plans = vec![
+        load(EVERYTHING, None),
+        load(EVERYTHING, Some("calm")),
+        load(LARCH_ROW, None),
+    ];
     plans.extend(TACTICS.iter().map(|tactic| load(LARCH_ROW, Some(tactic))));
     for mut plan in plans {
         let text = scenario::resolved_text(&plan);

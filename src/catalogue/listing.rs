@@ -1,6 +1,8 @@
 //! The catalogue as text and as JSON, for `doorglow catalogue`.
 
-use super::{Catalogue, Clear, FuelRow, LiningRow, NumberRow, PositionRow, catalogue};
+use super::{
+    Catalogue, Clear, FuelRow, GlassRow, LeafRow, LiningRow, NumberRow, PositionRow, catalogue,
+};
 use crate::units::{Dimension, write};
 use serde_json::{Value, json};
 use std::fmt::Write as _;
@@ -47,6 +49,26 @@ fn text(catalogue: &Catalogue) -> String {
     numbers(&mut out, &catalogue.gaps, Dimension::Area);
     out.push_str("\nPOSTURES (height of the head above the floor)\n");
     numbers(&mut out, &catalogue.postures, Dimension::Length);
+    out.push_str("\nGLASS (when it falls out is uncertain: vary it)\n");
+    for row in &catalogue.glass {
+        let value = format!(
+            "{} inner pane; falls out at {} of the layer, or {} rise of the pane when asked for; {:.0} % of the clear width",
+            write(row.pane.thickness, Dimension::Length),
+            write(row.layer, Dimension::Temperature),
+            write(row.rise, Dimension::TemperatureDifference),
+            row.fraction * 100.0,
+        );
+        entry(&mut out, &row.pane.name, &value, &row.note, &row.source);
+    }
+    out.push_str("\nDOOR LEAVES (when they fail is uncertain: vary it)\n");
+    for row in &catalogue.leaves {
+        let value = format!(
+            "fails {} after the layer has reached {}",
+            write(row.delay, Dimension::Time),
+            write(row.layer, Dimension::Temperature),
+        );
+        entry(&mut out, &row.name, &value, &row.note, &row.source);
+    }
     out
 }
 
@@ -120,6 +142,8 @@ fn json(catalogue: &Catalogue) -> Value {
         "positions": positions,
         "gaps": numbers_json(&catalogue.gaps),
         "postures": numbers_json(&catalogue.postures),
+        "glass": catalogue.glass.iter().map(glass_json).collect::<Vec<_>>(),
+        "leaves": catalogue.leaves.iter().map(leaf_json).collect::<Vec<_>>(),
     })
 }
 
@@ -143,6 +167,29 @@ fn position_json(row: &PositionRow) -> Value {
         Clear::Width(width) => value["clear_width"] = json!(width),
     }
     value
+}
+
+fn glass_json(row: &GlassRow) -> Value {
+    json!({
+        "pane": row.pane,
+        "layer": row.layer,
+        "rise": row.rise,
+        "fraction": row.fraction,
+        "delay": row.delay,
+        "note": row.note,
+        "source": row.source,
+    })
+}
+
+fn leaf_json(row: &LeafRow) -> Value {
+    json!({
+        "name": row.name,
+        "layer": row.layer,
+        "fraction": row.fraction,
+        "delay": row.delay,
+        "note": row.note,
+        "source": row.source,
+    })
 }
 
 fn numbers_json(rows: &[NumberRow]) -> Vec<Value> {

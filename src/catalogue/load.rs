@@ -1,13 +1,14 @@
 //! Reads the embedded files of `models/`.
 
-use super::{Catalogue, Clear, FuelRow, LiningRow, NumberRow, PositionRow};
-use crate::plan::{Course, Fuel, Lining};
+use super::{Catalogue, Clear, FuelRow, GlassRow, LeafRow, LiningRow, NumberRow, PositionRow};
+use crate::plan::{Course, Fuel, Lining, Pane};
 use crate::units::{self, Dimension};
 use serde::Deserialize;
 
 const FUELS: &str = include_str!("../../models/fuels.toml");
 const LININGS: &str = include_str!("../../models/linings.toml");
 const GROWTH: &str = include_str!("../../models/growth.toml");
+const GLASS: &str = include_str!("../../models/glass.toml");
 const DOORS: &str = include_str!("../../models/doors.toml");
 
 #[derive(Deserialize)]
@@ -86,6 +87,40 @@ struct DoorFile {
     position: Vec<PositionText>,
     gap: Vec<GapText>,
     posture: Vec<PostureText>,
+    leaf: Vec<LeafText>,
+}
+
+#[derive(Deserialize)]
+#[serde(deny_unknown_fields)]
+struct GlassFile {
+    glass: Vec<GlassText>,
+}
+
+#[derive(Deserialize)]
+#[serde(deny_unknown_fields)]
+struct GlassText {
+    name: String,
+    thickness: String,
+    density: String,
+    heat_capacity: String,
+    emissivity: f64,
+    layer: String,
+    glass: String,
+    fraction: f64,
+    delay: String,
+    note: String,
+    source: String,
+}
+
+#[derive(Deserialize)]
+#[serde(deny_unknown_fields)]
+struct LeafText {
+    name: String,
+    layer: String,
+    fraction: f64,
+    delay: String,
+    note: String,
+    source: String,
 }
 
 #[derive(Deserialize)]
@@ -133,6 +168,10 @@ pub(super) fn embedded() -> Catalogue {
         catalogue.positions = keep(file.position, position, &mut faults);
         catalogue.gaps = keep(file.gap, gap, &mut faults);
         catalogue.postures = keep(file.posture, posture, &mut faults);
+        catalogue.leaves = keep(file.leaf, leaf, &mut faults);
+    }
+    if let Some(file) = parse::<GlassFile>("glass", GLASS, &mut faults) {
+        catalogue.glass = keep(file.glass, glass, &mut faults);
     }
     catalogue.faults = faults;
     catalogue
@@ -212,6 +251,36 @@ fn lining(text: LiningText) -> Result<LiningRow, String> {
             emissivity: text.emissivity,
             courses: text.courses.iter().map(course).collect::<Result<_, _>>()?,
         },
+        note: text.note,
+        source: text.source,
+    })
+}
+
+fn glass(text: GlassText) -> Result<GlassRow, String> {
+    let name = text.name.as_str();
+    Ok(GlassRow {
+        pane: Pane {
+            name: text.name.clone(),
+            thickness: si(name, &text.thickness, Dimension::Length)?,
+            density: si(name, &text.density, Dimension::Density)?,
+            heat_capacity: si(name, &text.heat_capacity, Dimension::HeatCapacity)?,
+            emissivity: text.emissivity,
+        },
+        layer: si(name, &text.layer, Dimension::Temperature)?,
+        rise: si(name, &text.glass, Dimension::TemperatureDifference)?,
+        fraction: text.fraction,
+        delay: si(name, &text.delay, Dimension::Time)?,
+        note: text.note,
+        source: text.source,
+    })
+}
+
+fn leaf(text: LeafText) -> Result<LeafRow, String> {
+    Ok(LeafRow {
+        layer: si(&text.name, &text.layer, Dimension::Temperature)?,
+        fraction: text.fraction,
+        delay: si(&text.name, &text.delay, Dimension::Time)?,
+        name: text.name,
         note: text.note,
         source: text.source,
     })

@@ -7,7 +7,7 @@ mod load;
 
 pub use listing::{Format, listing};
 
-use crate::plan::{Fuel, Lining};
+use crate::plan::{Fuel, Lining, Pane};
 use std::sync::OnceLock;
 
 /// Everything `models/` holds, in SI, in the order of the files.
@@ -25,6 +25,10 @@ pub struct Catalogue {
     pub gaps: Vec<NumberRow>,
     /// Heights of heads by posture, m above the floor.
     pub postures: Vec<NumberRow>,
+    /// Glass of windows.
+    pub glass: Vec<GlassRow>,
+    /// Door leaves that fail.
+    pub leaves: Vec<LeafRow>,
     /// Rows that could not be read; empty in a released program (a test holds
     /// it so).
     pub faults: Vec<String>,
@@ -49,6 +53,42 @@ pub struct LiningRow {
     /// What the solver uses.
     pub lining: Lining,
     /// What it stands for.
+    pub note: String,
+    /// Where the numbers come from.
+    pub source: String,
+}
+
+/// Glass, and when it falls out.
+#[derive(Debug, Clone)]
+pub struct GlassRow {
+    /// What the solver heats.
+    pub pane: Pane,
+    /// Layer temperature at which it falls out, K.
+    pub layer: f64,
+    /// Rise of the pane at which it falls out, K.
+    pub rise: f64,
+    /// Share of the clear width that comes open, 0..1.
+    pub fraction: f64,
+    /// How long after the level is passed, s.
+    pub delay: f64,
+    /// What it stands for, with the ranges.
+    pub note: String,
+    /// Where the numbers come from.
+    pub source: String,
+}
+
+/// A door leaf, and when it fails.
+#[derive(Debug, Clone)]
+pub struct LeafRow {
+    /// Name as written in a scenario.
+    pub name: String,
+    /// Layer temperature from which the time counts, K.
+    pub layer: f64,
+    /// Share of the clear width that comes open, 0..1.
+    pub fraction: f64,
+    /// How long after the level is passed, s.
+    pub delay: f64,
+    /// What it stands for, with the ranges.
     pub note: String,
     /// Where the numbers come from.
     pub source: String,
@@ -125,6 +165,16 @@ impl Catalogue {
         number(&self.postures, name)
     }
 
+    /// Glass by name.
+    pub fn glass(&self, name: &str) -> Option<&GlassRow> {
+        self.glass.iter().find(|row| row.pane.name == name)
+    }
+
+    /// Door leaf by name.
+    pub fn leaf(&self, name: &str) -> Option<&LeafRow> {
+        self.leaves.iter().find(|row| row.name == name)
+    }
+
     /// Position by name.
     pub fn position(&self, name: &str) -> Option<Clear> {
         self.positions
@@ -171,7 +221,9 @@ mod tests {
             .chain(catalogue.growth.iter().map(|row| &row.source))
             .chain(catalogue.gaps.iter().map(|row| &row.source))
             .chain(catalogue.postures.iter().map(|row| &row.source))
-            .chain(catalogue.positions.iter().map(|row| &row.source));
+            .chain(catalogue.positions.iter().map(|row| &row.source))
+            .chain(catalogue.glass.iter().map(|row| &row.source))
+            .chain(catalogue.leaves.iter().map(|row| &row.source));
         for source in sources {
             assert!(source.len() > 10);
         }
@@ -225,5 +277,27 @@ mod tests {
         assert!((catalogue.position("one third").unwrap().of(width) - 0.3).abs() < 1e-12);
         assert_eq!(catalogue.posture("kneeling"), Some(1.0));
         assert_eq!(catalogue.gap("interior door"), Some(0.012));
+    }
+
+    /// The catalogue and the formulas of glass and doors say the same.
+    #[test]
+    fn formula_glass_and_doors_as_in_physics() {
+        use crate::physics::glass;
+        for (name, of) in [
+            ("single thin", glass::SINGLE_THIN),
+            ("single thick", glass::SINGLE_THICK),
+            ("double", glass::DOUBLE),
+        ] {
+            let row = catalogue().glass(name).unwrap();
+            assert_eq!(row.layer, of.gas_temperature, "{name}");
+            assert_eq!(row.pane.thickness, of.thickness);
+            assert_eq!(row.pane.density, glass::DENSITY);
+            assert_eq!(row.pane.heat_capacity, glass::HEAT_CAPACITY);
+            assert_eq!(row.pane.emissivity, glass::EMISSIVITY);
+            assert!(row.rise > of.crack_rise);
+        }
+        let hollow = catalogue().leaf("hollow").unwrap();
+        assert_eq!(hollow.layer, glass::HOLLOW_DOOR_TEMPERATURE);
+        assert_eq!(hollow.delay, glass::HOLLOW_DOOR_DELAY);
     }
 }

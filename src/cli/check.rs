@@ -27,7 +27,7 @@ pub fn check(options: &CheckOptions) -> Result<Done, Failure> {
                 "program_version": PROGRAM_VERSION,
                 "usable": true,
                 "scenario_hash": read.hash,
-                "faults": faults::as_json(&read.loaded.cautions, &read.text),
+                "faults": faults::as_json(&read.loaded.cautions),
                 "plan": plan,
             });
             streams::write(&format!("{document:#}\n"))?;

@@ -9,14 +9,14 @@ use crate::show::PROGRAM_VERSION;
 use serde_json::{Value, json};
 
 /// Tells all faults and gives the failure that they are.
-pub fn tell(report: &Report, text: &str, format: Format) -> Failure {
+pub fn tell(report: &Report, format: Format) -> Failure {
     caution(report);
     if format == Format::Json {
         let document = json!({
             "program": "doorglow",
             "program_version": PROGRAM_VERSION,
             "usable": false,
-            "faults": as_json(report, text),
+            "faults": as_json(report),
         });
         if let Err(failure) = streams::write(&format!("{document:#}\n")) {
             return failure;
@@ -33,17 +33,21 @@ pub fn caution(report: &Report) {
 }
 
 /// The faults as data, with line and column counted from one.
-pub fn as_json(report: &Report, text: &str) -> Vec<Value> {
+pub fn as_json(report: &Report) -> Vec<Value> {
     report
         .faults
         .iter()
-        .map(|fault| fault_json(fault, text))
+        .map(|fault| fault_json(fault, report))
         .collect()
 }
 
-fn fault_json(fault: &Fault, text: &str) -> Value {
-    let place = fault.span.as_ref().map(|span| place(text, span.start));
+fn fault_json(fault: &Fault, report: &Report) -> Value {
+    let place = fault
+        .span
+        .as_ref()
+        .map(|span| place(report.text(), span.start));
     json!({
+        "file": report.file_name(),
         "code": fault.code,
         "severity": match fault.severity {
             Severity::Error => "error",

@@ -19,9 +19,7 @@ pub const SCENARIO_FILE: &str = "scenario.toml";
 pub struct Read {
     /// Plan and cautions.
     pub loaded: Loaded,
-    /// Its text.
-    pub text: String,
-    /// SHA-256 of the text.
+    /// SHA-256 of the text, followed by that of its own models.
     pub hash: String,
 }
 
@@ -42,14 +40,20 @@ pub struct Played {
 pub fn read(file: &Path, tactic: Option<&str>, format: Format) -> Result<Read, Failure> {
     let bytes = fs::read(file).map_err(|error| Failure::read(file, error))?;
     let name = file.display().to_string();
-    let text = scenario::text_from_bytes(&name, bytes)
-        .map_err(|report| faults::tell(&report, "", format))?;
-    let loaded = scenario::load_with_cautions(&name, &text, tactic)
-        .map_err(|report| faults::tell(&report, &text, format))?;
+    let text =
+        scenario::text_from_bytes(&name, bytes).map_err(|report| faults::tell(&report, format))?;
+    let beside = |models: &str| {
+        let path = file.with_file_name(models);
+        let bytes = fs::read(&path).map_err(|error| error.to_string())?;
+        String::from_utf8(bytes).map_err(|_| "it is not UTF-8 text".to_owned())
+    };
+    let loaded = scenario::load_beside(&name, &text, tactic, &beside)
+        .map_err(|report| faults::tell(&report, format))?;
+    // A run comes from the scenario and the models beside it.
+    let models = loaded.models.as_ref().map_or("", |models| &models.text);
     Ok(Read {
-        hash: scenario::hash(&text),
+        hash: scenario::hash(&format!("{text}{models}")),
         loaded,
-        text,
     })
 }
 

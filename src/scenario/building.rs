@@ -1,8 +1,18 @@
 //! The short reading of a building that `doorglow check` prints.
 
+/// A line; writing to a string cannot fail.
+macro_rules! line {
+    ($out:expr, $($words:tt)*) => {
+        let _ = writeln!($out, $($words)*);
+    };
+}
+
+mod actions;
+mod openings;
+
 use super::hand;
-use super::resolve::{energy, stands_open};
-use crate::plan::{Burning, Curve, Effect, Item, Opening, OpeningKind, Plan, RoomId, Space};
+use super::resolve::{energy, open_area, stands_open};
+use crate::plan::{Burning, Curve, Item, Opening, Plan, RoomId, Space};
 use std::fmt::Write as _;
 
 /// Time after ignition at which linings are judged, s.
@@ -14,21 +24,16 @@ const LINING_TIME: f64 = 120.0;
 pub fn building_text(plan: &Plan) -> String {
     let mut out = String::new();
     rooms(&mut out, plan);
-    openings(&mut out, plan);
+    openings::openings(&mut out, plan);
+    openings::wind(&mut out, plan);
+    openings::fans(&mut out, plan);
     contents(&mut out, plan);
-    actions(&mut out, plan);
+    actions::actions(&mut out, plan);
     out.push_str(
         "\nHand figures are cross-checks with wide bands; the run does not use them.\n\
          For planning and teaching only, never for decisions at a live incident.\n",
     );
     out
-}
-
-/// A line; writing to a string cannot fail.
-macro_rules! line {
-    ($out:expr, $($words:tt)*) => {
-        let _ = writeln!($out, $($words)*);
-    };
 }
 
 fn rooms(out: &mut String, plan: &Plan) {
@@ -44,10 +49,16 @@ fn rooms(out: &mut String, plan: &Plan) {
     );
     line!(out, "\nROOMS");
     let widest = widest(plan.rooms.iter().map(|room| room.name.as_str()));
+    let one_level = plan.rooms.iter().all(|room| room.floor_level == 0.0);
     for room in &plan.rooms {
+        let level = if one_level {
+            String::new()
+        } else {
+            format!("  floor at {:+.2} m", room.floor_level)
+        };
         line!(
             out,
-            "  {:widest$}  {:.2} x {:.2} x {:.2} m  {:5.1} m2  {:6.1} m3",
+            "  {:widest$}  {:.2} x {:.2} x {:.2} m  {:5.1} m2  {:6.1} m3{level}",
             room.name,
             room.width,
             room.length,
@@ -83,73 +94,6 @@ fn linings(out: &mut String, plan: &Plan) {
         };
         line!(out, "  {who}: {words}");
     }
-}
-
-fn openings(out: &mut String, plan: &Plan) {
-    line!(
-        out,
-        "\nOPENINGS (air that can burn through, by hand: 1500 A sqrt(H) kW)"
-    );
-    let moved = || {
-        plan.openings
-            .iter()
-            .filter(|opening| opening.kind != OpeningKind::Gap)
-    };
-    let widest = widest(moved().map(|opening| opening.name.as_str()));
-    for opening in moved() {
-        let height = opening.head - opening.sill;
-        let factor = |width| hand::opening_factor(width, height);
-        let now = if opening.clear_width <= 0.0 {
-            format!("shut, gap {:.4} m2", opening.gap_area)
-        } else if opening.clear_width < opening.width {
-            format!(
-                "{:.2} m clear, {:.2} MW",
-                opening.clear_width,
-                hand::air_limit(factor(opening.clear_width)) / 1e6
-            )
-        } else {
-            "open".to_owned()
-        };
-        line!(
-            out,
-            "  {:widest$}  {:.2} x {:.2} m  A sqrt(H) {:.2} m5/2  {:.2} MW when open; now {now}",
-            opening.name,
-            opening.width,
-            height,
-            factor(opening.width),
-            hand::air_limit(factor(opening.width)) / 1e6,
-        );
-        line!(
-            out,
-            "  {:widest$}  {} to {}",
-            "",
-            side(plan, opening.from),
-            side(plan, opening.to)
-        );
-    }
-    if moved().next().is_none() {
-        line!(out, "  none");
-    }
-    let leak: f64 = plan
-        .openings
-        .iter()
-        .filter(|opening| opening.from == Space::OpenAir || opening.to == Space::OpenAir)
-        .map(|opening| {
-            let open = if opening.width > 0.0 {
-                opening.clear_width / opening.width
-            } else {
-                0.0
-            };
-            opening.gap_area * (1.0 - open)
-        })
-        .sum();
-    line!(
-        out,
-        "  gaps to the open air at ignition: {leak:.3} m2 (orifice area), about {:.0} kW by the same rule",
-        plan.rooms
-            .first()
-            .map_or(0.0, |room| 1500.0 * leak * room.height.sqrt())
-    );
 }
 
 fn contents(out: &mut String, plan: &Plan) {
@@ -242,9 +186,9 @@ fn flashover(out: &mut String, plan: &Plan, id: RoomId) {
         .filter(of_room)
         .filter(|opening| stands_open(opening))
         .collect();
-    let area = |opening: &&Opening| opening.clear_width * (opening.head - opening.sill);
     let factor: f64 = open
         .iter()
+        .filter(|opening| !opening.kind.is_horizontal())
         .map(|opening| hand::opening_factor(opening.clear_width, opening.head - opening.sill))
         .sum();
     if factor <= 0.0 {
@@ -255,7 +199,7 @@ fn flashover(out: &mut String, plan: &Plan, id: RoomId) {
         );
         return;
     }
-    let surface = hand::inner_surface(room, open.iter().map(area).sum());
+    let surface = hand::inner_surface(room, open.iter().map(|opening| open_area(opening)).sum());
     let mqh = hand::conductance(&room.walls, LINING_TIME)
         .map(|conductance| hand::flashover_mqh(factor, surface, conductance));
     line!(
@@ -270,47 +214,6 @@ fn flashover(out: &mut String, plan: &Plan, id: RoomId) {
             mqh / 1e6
         )),
     );
-}
-
-fn actions(out: &mut String, plan: &Plan) {
-    line!(out, "\nACTIONS");
-    if plan.actions.is_empty() {
-        line!(out, "  none");
-    }
-    for action in &plan.actions {
-        let because = action
-            .because
-            .as_ref()
-            .map_or_else(String::new, |because| format!(" ({because})"));
-        let done = done(plan, action.effect, &action.what, &because);
-        line!(out, "  {:>8}  {}: {done}", clock(action.time), action.name);
-    }
-}
-
-/// What a change does, in words and by hand.
-fn done(plan: &Plan, effect: Effect, what: &str, because: &str) -> String {
-    match effect {
-        Effect::ClearWidth { opening, width } => {
-            let Some(opening) = plan.openings.get(opening.0) else {
-                return String::new();
-            };
-            if opening.kind.is_horizontal() {
-                let area = opening.area * width / opening.width;
-                return format!("{} {what}{because}; {area:.2} m2", opening.name);
-            }
-            let factor = hand::opening_factor(width, opening.head - opening.sill);
-            format!(
-                "{} {what}{because}; {width:.2} m clear, {:.2} MW by hand",
-                opening.name,
-                hand::air_limit(factor) / 1e6
-            )
-        }
-        Effect::Fan { fan, running } => {
-            let name = plan.fans.get(fan.0).map_or("", |fan| fan.name.as_str());
-            let verb = if running { "starts" } else { "stops" };
-            format!("{name} {verb}{because}")
-        }
-    }
 }
 
 /// Rooms that stand open to a room at ignition, and whether any of them stands

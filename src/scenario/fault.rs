@@ -131,6 +131,16 @@ impl Report {
         }
     }
 
+    /// Name of the file.
+    pub fn file_name(&self) -> &str {
+        &self.file_name
+    }
+
+    /// Text of the file, empty when it could not be read as text.
+    pub fn text(&self) -> &str {
+        &self.text
+    }
+
     /// Faults that keep the scenario from running.
     pub fn errors(&self) -> impl Iterator<Item = &Fault> {
         self.faults

@@ -10,6 +10,7 @@ mod fault;
 mod fields;
 mod hand;
 mod names;
+mod own_models;
 mod read;
 mod reference;
 mod resolve;
@@ -17,6 +18,7 @@ mod resolved;
 
 pub use building::building_text;
 pub use fault::{Fault, Report, Severity, code};
+pub use own_models::{Beside, Models};
 pub use reference::reference_page;
 pub use resolved::resolved_text;
 
@@ -29,6 +31,8 @@ use std::fmt::Write as _;
 pub struct Loaded {
     /// The plan.
     pub plan: Plan,
+    /// The user's own models file, when the scenario names one.
+    pub models: Option<Models>,
     /// Cautions; nothing that keeps it from running.
     pub cautions: Report,
 }
@@ -50,6 +54,22 @@ pub fn load_with_cautions(
     text: &str,
     tactic: Option<&str>,
 ) -> Result<Loaded, Report> {
+    load_beside(file_name, text, tactic, &|_| {
+        Err("only a scenario in a folder has files beside it".to_owned())
+    })
+}
+
+/// As [`load_with_cautions`], with a way to the files beside the scenario: the
+/// user's own models.
+///
+/// # Errors
+/// As [`load`]; faults of the models file come in a report of their own.
+pub fn load_beside(
+    file_name: &str,
+    text: &str,
+    tactic: Option<&str>,
+    beside: Beside<'_>,
+) -> Result<Loaded, Report> {
     if text.len() > read::LARGEST_FILE {
         let fault = Fault::elsewhere(
             code::TOO_MUCH,
@@ -58,8 +78,13 @@ pub fn load_with_cautions(
         return Err(Report::new(file_name, "", vec![fault]));
     }
     let mut faults = Vec::new();
-    let sheet = read::sheet(text, &mut faults);
-    let (plan, found) = resolve::resolve(&sheet, tactic);
+    let models = own_models::beside(text, beside).unwrap_or_else(|fault| {
+        faults.push(fault);
+        None
+    });
+    let catalogue = own_models::with_own(models.as_ref())?;
+    let sheet = read::sheet(text, &catalogue, &mut faults);
+    let (plan, found) = resolve::resolve(&sheet, &catalogue, tactic);
     if faults.iter().any(|fault| fault.code == code::SYNTAX) {
         // A broken table makes names unknown and keys missing that are there.
         faults.extend(
@@ -78,6 +103,7 @@ pub fn load_with_cautions(
     let report = Report::new(file_name, text, faults);
     Ok(Loaded {
         plan,
+        models,
         cautions: report,
     })
 }

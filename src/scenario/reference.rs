@@ -1,6 +1,7 @@
 //! The reference page of the scenario file, written from the field table.
 
-use super::fields::{Field, KNOBS, Kind, Need, Shape, TABLES, Table, Words};
+use super::fields::{Field, KNOBS, Kind, MODEL_ROWS, Need, Shape, TABLES, Table, Words};
+use crate::catalogue::catalogue;
 use crate::plan::Choices;
 use crate::units::{self, Dimension};
 use std::fmt::Write as _;
@@ -37,6 +38,15 @@ pub fn reference_page() -> String {
     }
     out.push_str("\nLengths, times and masses may add terms: `\"6 ft 8 in\"`, `\"4 min 30 s\"`.\n");
     for table in TABLES {
+        section(&mut out, table);
+    }
+    out.push_str(
+        "\n# A models file of your own\n\n\
+         The scenario names it with `models`; it lies beside the scenario. \
+         Its rows have the form of the files of `models/` and go before rows of the same name there. \
+         Every row names its source.\n",
+    );
+    for table in MODEL_ROWS {
         section(&mut out, table);
     }
     out
@@ -114,12 +124,18 @@ fn kind_words(kind: Kind) -> String {
             format!("a list of {least} to {most} names, each a {}", of.words())
         }
         Kind::Starts => "a table of openings and positions".to_owned(),
+        Kind::Inner(table) => format!("a table with keys as in `{}`", table.header()),
+        Kind::GivesWay(table) => format!("a table or a short form, see `{}`", table.header()),
+        Kind::Condition => {
+            "`\"ROOM layer temperature > 300 °C\"`, `\"ROOM smoke level < 1.5 m\"`, `\"ROOM oxygen < 15 %\"`, `\"heat release > 1 MW\"`".to_owned()
+        }
+        Kind::AirChanges => "air changes per hour at a pressure".to_owned(),
     }
 }
 
 fn word_list(words: Words) -> String {
     let listed: Vec<String> = words
-        .list()
+        .list(catalogue())
         .iter()
         .map(|word| format!("`\"{word}\"`"))
         .collect();
@@ -138,6 +154,7 @@ pub(super) fn example(field: &Field) -> String {
 pub(super) fn toml_example(kind: Kind, text: &str) -> String {
     let bare = match kind {
         Kind::Flag | Kind::Two(_) | Kind::Courses | Kind::Names(..) | Kind::Starts => true,
+        Kind::Inner(_) | Kind::GivesWay(_) => true,
         Kind::Quantity(Dimension::Ratio, ..) => text.parse::<f64>().is_ok(),
         _ => false,
     };

@@ -1,10 +1,14 @@
 //! A plan as a scenario file with every default written out, readable again.
 
-use super::fields::{KNOBS, Kind, OPEN_AIR_NAME};
+mod air;
+
+pub(super) use air::condition;
+
+use super::fields::{KNOBS, Kind};
 use crate::catalogue::catalogue;
 use crate::plan::{
-    Action, Burning, Curve, Fuel, Item, Lining, Opening, OpeningKind, PlacementRule, Plan,
-    PlumeModel, Room, SharedWall, Space, Station,
+    Burning, Curve, Fuel, Item, Lining, OpeningId, Pane, PlacementRule, Plan, PlumeModel, Room,
+    SharedWall, Station,
 };
 use crate::units::{Dimension, write};
 
@@ -38,8 +42,14 @@ pub fn resolved_text(plan: &Plan) -> String {
     for lining in linings(plan) {
         out.lining(lining);
     }
-    for opening in &plan.openings {
-        out.opening(opening, plan);
+    for (index, opening) in plan.openings.iter().enumerate() {
+        out.opening(opening, OpeningId(index), plan);
+    }
+    for pane in panes(plan) {
+        out.pane(pane);
+    }
+    for fan in &plan.fans {
+        out.fan(fan, plan);
     }
     for item in &plan.items {
         out.item(item, plan);
@@ -53,8 +63,22 @@ pub fn resolved_text(plan: &Plan) -> String {
     for action in &plan.actions {
         out.action(action, plan);
     }
+    for trigger in &plan.triggers {
+        out.trigger(trigger, plan);
+    }
     out.physics(plan);
     out.out
+}
+
+/// Distinct glass, in order of first use.
+fn panes(plan: &Plan) -> Vec<&Pane> {
+    let mut distinct: Vec<&Pane> = Vec::new();
+    for pane in plan.openings.iter().filter_map(|o| o.pane.as_ref()) {
+        if !distinct.iter().any(|known| known.name == pane.name) {
+            distinct.push(pane);
+        }
+    }
+    distinct
 }
 
 /// Distinct linings, in order of first use.
@@ -116,6 +140,7 @@ impl Writer {
         self.length("width", room.width);
         self.length("length", room.length);
         self.length("height", room.height);
+        self.length("floor_level", room.floor_level);
         self.text("walls", &room.walls.name);
         self.text("ceiling", &room.ceiling.name);
         self.text("floor", &room.floor.name);
@@ -145,34 +170,6 @@ impl Writer {
             ));
         }
         self.line("]");
-    }
-
-    fn opening(&mut self, opening: &Opening, plan: &Plan) {
-        self.table("opening", Some(&opening.name));
-        let kind = match opening.kind {
-            OpeningKind::Door => "door",
-            OpeningKind::Window => "window",
-            OpeningKind::Gap => "gap",
-            OpeningKind::Hatch => "hatch",
-            OpeningKind::Stair => "stair",
-            OpeningKind::Division => "division",
-        };
-        self.text("kind", kind);
-        let sides = [opening.from, opening.to].map(|side| match side {
-            Space::Room(id) => quoted(&plan.rooms[id.0].name),
-            Space::OpenAir => quoted(OPEN_AIR_NAME),
-        });
-        self.line(&format!("between = [{}, {}]", sides[0], sides[1]));
-        self.length("sill", opening.sill);
-        self.length("head", opening.head);
-        if opening.kind != OpeningKind::Gap {
-            self.length("width", opening.width);
-            self.length("position", opening.clear_width);
-        }
-        self.quantity("gap", opening.gap_area, Dimension::Area);
-        self.quantity("coefficient", opening.coefficient, Dimension::Ratio);
-        self.quantity("gap_coefficient", opening.gap_coefficient, Dimension::Ratio);
-        self.place(opening.at);
     }
 
     fn item(&mut self, item: &Item, plan: &Plan) {
@@ -279,28 +276,6 @@ impl Writer {
         self.quantity("out", limits.out_temperature, Dimension::Temperature);
         self.quantity("oxygen", limits.oxygen, Dimension::Ratio);
         self.length("visibility", limits.visibility);
-    }
-
-    fn action(&mut self, action: &Action, plan: &Plan) {
-        self.line("");
-        self.line("[[action]]");
-        self.text("name", &action.name);
-        self.quantity("at", action.time, Dimension::Time);
-        let Some(opening) = action.effect.opening() else {
-            return;
-        };
-        let opening = &plan.openings[opening.0].name;
-        match action.what.as_str() {
-            "open" | "shut" => self.text(&action.what, opening),
-            what => {
-                self.text("set", opening);
-                self.text("to", what);
-            }
-        }
-        self.quantity("over", action.over, Dimension::Time);
-        if let Some(because) = &action.because {
-            self.text("because", because);
-        }
     }
 
     fn physics(&mut self, plan: &Plan) {

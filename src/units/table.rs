@@ -39,6 +39,12 @@ pub enum Dimension {
     HeatTransfer,
     /// kg/mol.
     MolarMass,
+    /// m/s.
+    Speed,
+    /// m3/s.
+    VolumeFlow,
+    /// Degrees, clockwise from north for directions.
+    Angle,
     /// A plain number or a share; `"70 %"` and `0.7` say the same.
     Ratio,
 }
@@ -64,6 +70,9 @@ impl Dimension {
         Dimension::HeatCapacitySlope,
         Dimension::HeatTransfer,
         Dimension::MolarMass,
+        Dimension::Speed,
+        Dimension::VolumeFlow,
+        Dimension::Angle,
         Dimension::Ratio,
     ];
 
@@ -88,6 +97,9 @@ impl Dimension {
             Dimension::HeatCapacitySlope => "a slope of heat capacity",
             Dimension::HeatTransfer => "a heat transfer coefficient",
             Dimension::MolarMass => "a molar mass",
+            Dimension::Speed => "a speed",
+            Dimension::VolumeFlow => "a volume flow",
+            Dimension::Angle => "an angle",
             Dimension::Ratio => "a plain number or a percentage",
         }
     }
@@ -113,6 +125,9 @@ impl Dimension {
             Dimension::HeatCapacitySlope => "3.3 J/kg/K2",
             Dimension::HeatTransfer => "15 W/m2/K",
             Dimension::MolarMass => "44.1 g/mol",
+            Dimension::Speed => "9 m/s",
+            Dimension::VolumeFlow => "3 m3/s",
+            Dimension::Angle => "270 °",
             Dimension::Ratio => "70 %",
         }
     }
@@ -279,6 +294,18 @@ pub const UNITS: &[Unit] = &[
     unit(D::HeatTransfer, "W/(m2 K)", 1.0, 1.0),
     shown(unit(D::MolarMass, "g/mol", 1.0, 1000.0), 0.0, FAR),
     unit(D::MolarMass, "kg/mol", 1.0, 1.0),
+    shown(unit(D::Speed, "m/s", 1.0, 1.0), 0.0, FAR),
+    unit(D::Speed, "km/h", 1000.0, 3600.0),
+    unit(D::Speed, "mph", FOOT * 5280.0, 3600.0),
+    unit(D::Speed, "kn", 1852.0, 3600.0),
+    unit(D::Speed, "ft/s", FOOT, 1.0),
+    unit(D::Speed, "fpm", FOOT, 60.0),
+    shown(unit(D::VolumeFlow, "m3/s", 1.0, 1.0), 0.0, FAR),
+    unit(D::VolumeFlow, "m3/h", 1.0, 3600.0),
+    unit(D::VolumeFlow, "L/s", 1.0, 1000.0),
+    unit(D::VolumeFlow, "cfm", FOOT * FOOT * FOOT, 60.0),
+    shown(unit(D::Angle, "°", 1.0, 1.0), 0.0, FAR),
+    unit(D::Angle, "deg", 1.0, 1.0),
     unit(D::Ratio, "%", 1.0, 100.0),
 ];
 

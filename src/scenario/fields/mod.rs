@@ -1,13 +1,15 @@
 //! The one table of scenario keys. A key is defined here and nowhere else;
 //! the reader, the messages, near names and `docs/scenario.md` come from it.
 
+mod air;
 mod contents;
 mod house;
+mod models;
 mod physics;
 
 pub(super) use physics::{KNOBS, Knob};
 
-use crate::catalogue::catalogue;
+use crate::catalogue::Catalogue;
 use crate::units::Dimension;
 
 /// What a value may be.
@@ -35,6 +37,14 @@ pub(super) enum Kind {
     Names(Of, usize, usize),
     /// Openings and their positions at ignition.
     Starts,
+    /// An inner table.
+    Inner(&'static Table),
+    /// When something gives way: an inner table, or one of its short forms.
+    GivesWay(&'static Table),
+    /// What an action waits for.
+    Condition,
+    /// Changes of air per hour at a pressure.
+    AirChanges,
 }
 
 /// Sets of words.
@@ -48,23 +58,53 @@ pub(super) enum Words {
     Gaps,
     /// Postures of the catalogue.
     Postures,
+    /// Points of the compass.
+    Compass,
+    /// Where the wind comes from.
+    WindFrom,
 }
+
+/// Points of the compass, an eighth of a turn apart, clockwise from north.
+pub(super) const COMPASS: [&str; 8] = [
+    "north",
+    "north-east",
+    "east",
+    "south-east",
+    "south",
+    "south-west",
+    "west",
+    "north-west",
+];
+
+/// The same as crews say it of the wind.
+pub(super) const WIND_FROM: [&str; 8] = [
+    "from the north",
+    "from the north-east",
+    "from the east",
+    "from the south-east",
+    "from the south",
+    "from the south-west",
+    "from the west",
+    "from the north-west",
+];
 
 impl Words {
     /// The words.
-    pub(super) fn list(self) -> Vec<&'static str> {
-        let names = |rows: &'static [crate::catalogue::NumberRow]| {
+    pub(super) fn list(self, catalogue: &Catalogue) -> Vec<&str> {
+        fn names(rows: &[crate::catalogue::NumberRow]) -> Vec<&str> {
             rows.iter().map(|row| row.name.as_str()).collect()
-        };
+        }
         match self {
             Words::Fixed(words) => words.to_vec(),
-            Words::Positions => catalogue()
+            Words::Positions => catalogue
                 .positions
                 .iter()
                 .map(|row| row.name.as_str())
                 .collect(),
-            Words::Gaps => names(&catalogue().gaps),
-            Words::Postures => names(&catalogue().postures),
+            Words::Gaps => names(&catalogue.gaps),
+            Words::Postures => names(&catalogue.postures),
+            Words::Compass => COMPASS.to_vec(),
+            Words::WindFrom => WIND_FROM.to_vec(),
         }
     }
 }
@@ -84,6 +124,14 @@ pub(super) enum Of {
     Lining,
     /// An action of the base.
     Action,
+    /// A facade.
+    Facade,
+    /// A fan.
+    Fan,
+    /// Glass of the scenario or the catalogue.
+    Glass,
+    /// A door leaf of the catalogue.
+    Leaf,
 }
 
 impl Of {
@@ -96,6 +144,10 @@ impl Of {
             Of::Fuel => "fuel",
             Of::Lining => "lining",
             Of::Action => "action",
+            Of::Facade => "facade",
+            Of::Fan => "fan",
+            Of::Glass => "glass",
+            Of::Leaf => "leaf",
         }
     }
 }
@@ -151,14 +203,19 @@ pub(super) struct Table {
     /// Sentences for the reference.
     pub(super) doc: &'static str,
     keys: &'static [Field],
+    /// Keys before its own, of a row in a models file.
+    row: &'static [Field],
     knobs: &'static [Knob],
 }
 
 impl Table {
     /// Its keys.
     pub(super) fn fields(&self) -> impl Iterator<Item = &'static Field> {
+        let (row, keys): (&'static [Field], &'static [Field]) = (self.row, self.keys);
         let knobs: &'static [Knob] = self.knobs;
-        self.keys.iter().chain(knobs.iter().map(|knob| &knob.field))
+        row.iter()
+            .chain(keys)
+            .chain(knobs.iter().map(|knob| &knob.field))
     }
 
     /// One of its keys.
@@ -230,27 +287,36 @@ const fn table(
         shape,
         doc,
         keys,
+        row: &[],
         knobs: &[],
     }
 }
 
+pub(super) use air::{FACADE, FAILS, FALLS_OUT, FAN, GLASS, WIND};
 pub(super) use contents::{ACTION, FUEL, ITEM, LIMITS, STATION, TACTIC, TACTIC_ACTION};
 pub(super) use house::{
     COURSE, INDOORS, LEAKAGE, LINING, OPEN_AIR, OPENING, ROOM, ROOT, SHARED_WALL,
 };
+pub(super) use models::MODEL_ROWS;
 pub(super) use physics::PHYSICS;
 
 /// Every table, in the order of the reference page.
 pub(super) const TABLES: &[&Table] = &[
     &ROOT,
     &OPEN_AIR,
+    &WIND,
+    &FACADE,
     &INDOORS,
     &ROOM,
     &LINING,
     &COURSE,
     &SHARED_WALL,
     &OPENING,
+    &GLASS,
+    &FALLS_OUT,
+    &FAILS,
     &LEAKAGE,
+    &FAN,
     &ITEM,
     &FUEL,
     &STATION,

@@ -59,6 +59,7 @@ knobs! {
     autoignition_start, Temperature, 473.15, 1073.15, "Start of the ignition window of layer gases.";
     autoignition_full, Temperature, 523.15, 1273.15, "End of the ignition window of layer gases.";
     jet_lag, Time, 0.1, 30.0, "Lag of burning in the jets of openings.";
+    mixing_factor, Ratio, 0.0, 5.0, "Factor on the mixing of layers by momentum; 0 switches it off.";
     burnout_share, Ratio, 0.01, 1.0, "Share of the mass at which burn-out begins.";
     profile_thickness, Length, 0.01, 2.0, "Thickness of the interface at stations.";
     tolerance, Ratio, 1e-10, 1e-2, "Relative tolerance of the integration.";

@@ -14,7 +14,7 @@ const MOST_RATES: usize = 5000;
 /// Most courses in a lining.
 const MOST_COURSES: usize = 8;
 
-impl Reader {
+impl Reader<'_> {
     pub(super) fn two(
         &mut self,
         field: &Field,

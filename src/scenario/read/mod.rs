@@ -2,15 +2,18 @@
 //! kinds, units and ranges; nothing is looked up elsewhere yet.
 
 mod lists;
+mod special;
 mod table;
 mod value;
 mod values;
 
+pub(super) use special::{BY_GLASS, BY_LAYER, NEVER};
 pub(super) use values::{Located, Opened, Value, Values};
 
 use super::fault::{Fault, code};
 use super::fields::{self, Shape, Table};
 use super::names;
+use crate::catalogue::Catalogue;
 use std::ops::Range;
 use table::Reader;
 use toml::Spanned;
@@ -20,7 +23,7 @@ use toml::de::{DeTable, DeValue};
 pub(super) const LARGEST_FILE: usize = 1 << 20;
 
 /// A named table.
-#[derive(Debug)]
+#[derive(Debug, Clone)]
 pub(super) struct Named {
     /// Its name and where it stands.
     pub(super) name: Located<String>,
@@ -42,14 +45,18 @@ pub(super) struct TacticSheet {
 pub(super) struct Sheet {
     pub(super) root: Values,
     pub(super) open_air: Values,
+    pub(super) wind: Values,
     pub(super) indoors: Values,
     pub(super) limits: Values,
     pub(super) physics: Values,
+    pub(super) facades: Vec<Named>,
     pub(super) rooms: Vec<Named>,
     pub(super) linings: Vec<Named>,
     pub(super) shared_walls: Vec<Named>,
     pub(super) openings: Vec<Named>,
+    pub(super) glass: Vec<Named>,
     pub(super) leakages: Vec<Named>,
+    pub(super) fans: Vec<Named>,
     pub(super) items: Vec<Named>,
     pub(super) fuels: Vec<Named>,
     pub(super) stations: Vec<Named>,
@@ -57,14 +64,76 @@ pub(super) struct Sheet {
     pub(super) tactics: Vec<TacticSheet>,
 }
 
-/// Reads a file; faults are collected, never thrown.
-pub(super) fn sheet(text: &str, faults: &mut Vec<Fault>) -> Sheet {
-    let (document, errors) = DeTable::parse_recoverable(text);
-    let mut reader = Reader::default();
-    let sheet = Document {
-        root: document.get_ref(),
+impl Sheet {
+    /// A sheet that says nothing but some fuels and linings.
+    pub(super) fn of_materials(fuels: &[Named], linings: &[Named]) -> Self {
+        let none = |table: &'static Table| Values::new(table, 0..0);
+        Self {
+            root: none(&fields::ROOT),
+            open_air: none(&fields::OPEN_AIR),
+            wind: none(&fields::WIND),
+            indoors: none(&fields::INDOORS),
+            limits: none(&fields::LIMITS),
+            physics: none(&fields::PHYSICS),
+            facades: Vec::new(),
+            rooms: Vec::new(),
+            linings: linings.to_vec(),
+            shared_walls: Vec::new(),
+            openings: Vec::new(),
+            glass: Vec::new(),
+            leakages: Vec::new(),
+            fans: Vec::new(),
+            items: Vec::new(),
+            fuels: fuels.to_vec(),
+            stations: Vec::new(),
+            actions: Vec::new(),
+            tactics: Vec::new(),
+        }
     }
-    .sheet(&mut reader);
+}
+
+/// Reads a file; faults are collected, never thrown.
+pub(super) fn sheet(text: &str, catalogue: &Catalogue, faults: &mut Vec<Fault>) -> Sheet {
+    with_reader(text, catalogue, faults, |document, reader| {
+        document.sheet(reader)
+    })
+}
+
+/// A user's own models file: rows by the name of their kind.
+pub(super) fn models(
+    text: &str,
+    catalogue: &Catalogue,
+    faults: &mut Vec<Fault>,
+) -> Vec<(&'static str, Vec<Named>)> {
+    with_reader(text, catalogue, faults, |document, reader| {
+        document.models(reader)
+    })
+}
+
+/// Name of the user's own models file, as far as the text can be read.
+pub(super) fn models_file(text: &str) -> Option<Located<String>> {
+    let (document, _) = DeTable::parse_recoverable(text);
+    let value = document.get_ref().get(MODELS_KEY)?;
+    Some(Located {
+        value: value.get_ref().as_str()?.to_owned(),
+        span: value.span(),
+        given: true,
+    })
+}
+
+/// Key at the top of a scenario that names the models file.
+const MODELS_KEY: &str = "models";
+
+fn with_reader<T>(
+    text: &str,
+    catalogue: &Catalogue,
+    faults: &mut Vec<Fault>,
+    read: impl FnOnce(&Document<'_, '_>, &mut Reader<'_>) -> T,
+) -> T {
+    let (document, errors) = DeTable::parse_recoverable(text);
+    let mut reader = Reader::new(catalogue);
+    let root = document.get_ref();
+    let sheet = read(&Document { root }, &mut reader);
     if errors.is_empty() {
         faults.append(&mut reader.faults);
     } else {
@@ -150,19 +219,23 @@ struct Document<'a, 'i> {
 }
 
 impl<'a, 'i> Document<'a, 'i> {
-    fn sheet(&self, reader: &mut Reader) -> Sheet {
+    fn sheet(&self, reader: &mut Reader<'_>) -> Sheet {
         self.unknown_tables(reader);
         Sheet {
             root: self.root_values(reader),
             open_air: self.one(&fields::OPEN_AIR, reader),
+            wind: self.one(&fields::WIND, reader),
             indoors: self.one(&fields::INDOORS, reader),
             limits: self.one(&fields::LIMITS, reader),
             physics: self.one(&fields::PHYSICS, reader),
+            facades: self.named(&fields::FACADE, reader),
             rooms: self.named(&fields::ROOM, reader),
             linings: self.named(&fields::LINING, reader),
             shared_walls: self.named(&fields::SHARED_WALL, reader),
             openings: self.named(&fields::OPENING, reader),
+            glass: self.named(&fields::GLASS, reader),
             leakages: self.named(&fields::LEAKAGE, reader),
+            fans: self.named(&fields::FAN, reader),
             items: self.named(&fields::ITEM, reader),
             fuels: self.named(&fields::FUEL, reader),
             stations: self.named(&fields::STATION, reader),
@@ -179,31 +252,50 @@ impl<'a, 'i> Document<'a, 'i> {
         root.get(name)
     }
 
-    fn unknown_tables(&self, reader: &mut Reader) {
+    fn models(&self, reader: &mut Reader<'_>) -> Vec<(&'static str, Vec<Named>)> {
+        let names = || fields::MODEL_ROWS.iter().map(|table| table.name);
+        self.unknown_among(reader, "row of a models file", &names().collect::<Vec<_>>());
+        let rows = |of: &'static Table, reader: &mut Reader<'_>| -> Vec<Named> {
+            let list = self.entry(of.name).map(|value| reader.list(of, value));
+            list.unwrap_or_default()
+                .into_iter()
+                .filter_map(|values| {
+                    let name = values.name("name")?;
+                    reader.check_name(of, &name.value, &name.span);
+                    Some(Named { name, values })
+                })
+                .collect()
+        };
+        fields::MODEL_ROWS
+            .iter()
+            .map(|of| (of.name, rows(of, reader)))
+            .collect()
+    }
+
+    fn unknown_tables(&self, reader: &mut Reader<'_>) {
+        let known: Vec<&str> = fields::TABLES
+            .iter()
+            .filter(|table| table.shape != Shape::Inner && !table.name.contains('.'))
+            .map(|table| table.name)
+            .filter(|name| !name.is_empty())
+            .chain(fields::ROOT.fields().map(|field| field.name))
+            .collect();
+        self.unknown_among(reader, "key or table of a scenario", &known);
+    }
+
+    fn unknown_among(&self, reader: &mut Reader<'_>, what: &str, known: &[&str]) {
         for (key, span, _) in table::entries(self.root) {
-            let known = || {
-                fields::TABLES
-                    .iter()
-                    .filter(|table| table.shape != Shape::Inner && !table.name.contains('.'))
-                    .map(|table| table.name)
-                    .filter(|name| !name.is_empty())
-                    .chain(fields::ROOT.fields().map(|field| field.name))
-            };
-            if !known().any(|name| name == key) {
+            if !known.contains(&key) {
                 reader.faults.push(
-                    Fault::error(
-                        code::UNKNOWN_KEY,
-                        span,
-                        format!("`{key}` is not a key or table of a scenario"),
-                    )
-                    .label("unknown")
-                    .help(names::suggestion(key, "key", known())),
+                    Fault::error(code::UNKNOWN_KEY, span, format!("`{key}` is not a {what}"))
+                        .label("unknown")
+                        .help(names::suggestion(key, "key", known.iter().copied())),
                 );
             }
         }
     }
 
-    fn root_values(&self, reader: &mut Reader) -> Values {
+    fn root_values(&self, reader: &mut Reader<'_>) -> Values {
         let own = table::entries(self.root)
             .into_iter()
             .filter(|(key, ..)| fields::ROOT.field(key).is_some())
@@ -211,7 +303,7 @@ impl<'a, 'i> Document<'a, 'i> {
         reader.values(&fields::ROOT, 0..0, own)
     }
 
-    fn one(&self, of: &'static Table, reader: &mut Reader) -> Values {
+    fn one(&self, of: &'static Table, reader: &mut Reader<'_>) -> Values {
         let Some(value) = self.entry(of.name) else {
             return reader.values(of, 0..0, Vec::new());
         };
@@ -230,7 +322,7 @@ impl<'a, 'i> Document<'a, 'i> {
             .map_or(0..0, |(key, _)| key.span())
     }
 
-    fn named(&self, of: &'static Table, reader: &mut Reader) -> Vec<Named> {
+    fn named(&self, of: &'static Table, reader: &mut Reader<'_>) -> Vec<Named> {
         self.members(of, reader)
             .into_iter()
             .map(|(name, inner)| Named {
@@ -277,7 +369,7 @@ impl<'a, 'i> Document<'a, 'i> {
         members
     }
 
-    fn tactics(&self, reader: &mut Reader) -> Vec<TacticSheet> {
+    fn tactics(&self, reader: &mut Reader<'_>) -> Vec<TacticSheet> {
         let mut tactics = Vec::new();
         for (name, inner) in self.members(&fields::TACTIC, reader) {
             let (actions, own): (Vec<_>, Vec<_>) = table::entries(inner)

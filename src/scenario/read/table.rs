@@ -4,6 +4,7 @@ use super::super::fault::{Fault, code};
 use super::super::fields::{self, Field, Need, Shape, Table};
 use super::super::names;
 use super::values::{Located, Values};
+use crate::catalogue::Catalogue;
 use std::ops::Range;
 use toml::Spanned;
 use toml::de::{DeTable, DeValue};
@@ -28,13 +29,23 @@ pub(super) fn entries<'a, 'i>(table: &'a DeTable<'i>) -> Vec<Entry<'a, 'i>> {
 }
 
 /// Collects faults while reading.
-#[derive(Debug, Default)]
-pub(super) struct Reader {
+#[derive(Debug)]
+pub(super) struct Reader<'c> {
     /// Found so far.
     pub(super) faults: Vec<Fault>,
+    /// Words that values may be.
+    pub(super) catalogue: &'c Catalogue,
 }
 
-impl Reader {
+impl<'c> Reader<'c> {
+    /// A reader that knows the words of a catalogue.
+    pub(super) fn new(catalogue: &'c Catalogue) -> Self {
+        Self {
+            faults: Vec::new(),
+            catalogue,
+        }
+    }
+
     /// Values of one table; every absent key gets its default or a fault.
     pub(super) fn values(
         &mut self,

@@ -5,7 +5,6 @@ use super::super::fields::{Field, Kind, Words};
 use super::super::{names, reference};
 use super::table::Reader;
 use super::values::Value;
-use crate::catalogue::catalogue;
 use crate::units::{self, Dimension};
 use std::ops::Range;
 use toml::Spanned;
@@ -14,11 +13,13 @@ use toml::de::DeValue;
 /// Longest text taken, characters.
 const LONGEST_TEXT: usize = 500;
 
-impl Reader {
+impl Reader<'_> {
     /// Value of a key, or `None` after a fault.
     pub(super) fn value(&mut self, field: &Field, value: &Spanned<DeValue>) -> Option<Value> {
         match field.kind {
-            Kind::Text | Kind::Name(_) => self.text(field, value).map(Value::Text),
+            Kind::Text | Kind::Name(_) | Kind::Condition => {
+                self.text(field, value).map(Value::Text)
+            }
             Kind::Flag => self.flag(field, value),
             Kind::Quantity(dimension, least, most) => {
                 self.quantity(field, value, (dimension, least, most))
@@ -32,6 +33,9 @@ impl Reader {
             Kind::Courses => self.courses(field, value),
             Kind::Names(_, least, most) => self.names(field, value, least, most),
             Kind::Starts => self.starts(field, value),
+            Kind::Inner(table) => self.inner(field, table, value),
+            Kind::GivesWay(table) => self.gives_way(field, table, value),
+            Kind::AirChanges => self.air_changes(field, value),
         }
     }
 
@@ -107,18 +111,7 @@ impl Reader {
                 units::rounded(least, dimension),
                 units::rounded(most, dimension),
             );
-            self.faults.push(
-                Fault::error(
-                    code::OUT_OF_RANGE,
-                    value.span(),
-                    format!("`{}` is out of range", field.name),
-                )
-                .label(format!("not within {least} to {most}"))
-                .help(format!(
-                    "{} It must lie within {least} to {most}",
-                    field.doc
-                )),
-            );
+            self.not_within(field, value.span(), &format!("{least} to {most}"));
             return None;
         }
         Some(Value::Number(si, text))
@@ -126,7 +119,7 @@ impl Reader {
 
     fn word(&mut self, field: &Field, value: &Spanned<DeValue>, words: Words) -> Option<Value> {
         let text = self.text(field, value)?;
-        let known = words.list();
+        let known = words.list(self.catalogue);
         if known.contains(&text.as_str()) {
             return Some(Value::Text(text));
         }
@@ -161,7 +154,7 @@ impl Reader {
         words: Words,
         range: (Dimension, f64, f64),
     ) -> Option<Value> {
-        let known = words.list();
+        let known = words.list(self.catalogue);
         match value.get_ref().as_str() {
             Some(text) if known.contains(&text) => Some(Value::Text(text.to_owned())),
             Some(text) if !looks_like_number(text) => {
@@ -178,13 +171,14 @@ impl Reader {
         match value.get_ref() {
             DeValue::Array(rows) => self.rates(field, rows, value.span()),
             DeValue::String(text) => {
-                if let Some(factor) = catalogue().growth(text) {
+                if let Some(factor) = self.catalogue.growth(text) {
                     return Some(Value::Number(factor, text.to_string()));
                 }
                 if looks_like_number(text) {
                     return self.quantity(field, value, FACTOR);
                 }
-                let known: Vec<&str> = catalogue()
+                let known: Vec<&str> = self
+                    .catalogue
                     .growth
                     .iter()
                     .map(|row| row.name.as_str())

@@ -4,52 +4,90 @@ use super::super::fault::{Fault, code};
 use super::super::fields::Of;
 use super::super::names;
 use super::super::read::{Located, Opened, Sheet, TacticSheet, Values};
+use super::gives_way::GivingWay;
 use super::{Resolver, same_name, unwanted, wanted};
-use crate::plan::{Action, Effect, Opening, OpeningId, OpeningKind};
+use crate::plan::{Action, Effect, FanId, Opening, OpeningId, OpeningKind, Room, Trigger};
 use crate::units::{Dimension, rounded};
 use std::ops::Range;
 
+/// What one action says it does.
+const VERBS: [&str; 5] = ["open", "shut", "set", "start", "stop"];
+
+/// When an action is done.
+#[derive(Debug, Clone)]
+enum Done {
+    /// At a time.
+    At(Action),
+    /// When something comes true.
+    When(Trigger),
+}
+
 /// An action with its place, for faults of a whole schedule.
-#[derive(Clone)]
+#[derive(Debug, Clone)]
 struct Placed {
-    action: Action,
+    done: Done,
     span: Range<usize>,
 }
 
+impl Placed {
+    fn name(&self) -> &str {
+        match &self.done {
+            Done::At(action) => &action.name,
+            Done::When(trigger) => &trigger.name,
+        }
+    }
+}
+
+/// A tactic: its actions, positions at ignition, and what does not give way.
+struct Tactic {
+    actions: Vec<Placed>,
+    start: Vec<(OpeningId, f64)>,
+    holds: Vec<OpeningId>,
+}
+
 impl Resolver<'_> {
-    /// Actions that are played. Every tactic is checked, played or not; the
-    /// one that is played also sets positions at ignition.
-    pub(super) fn played(&mut self, openings: &mut [Opening], tactic: Option<&str>) -> Vec<Action> {
+    /// Actions that are played, and what waits for a condition. Every tactic is
+    /// checked, played or not; the one that is played also sets positions at
+    /// ignition.
+    pub(super) fn played(
+        &mut self,
+        openings: &mut [Opening],
+        rooms: &[Room],
+        tactic: Option<&str>,
+    ) -> (Vec<Action>, Vec<Trigger>) {
         let sheet: &Sheet = self.sheet;
-        let base = self.placed(&sheet.actions, openings);
+        let giving_way = self.giving_way(openings);
+        let base = self.placed(&sheet.actions, openings, rooms);
         let mut played = None;
         for tactic_sheet in &sheet.tactics {
-            let (actions, start) = self.tactic(tactic_sheet, &base, openings);
+            let read = self.tactic(tactic_sheet, &base, openings, rooms);
             let mut own = openings.to_vec();
-            for (opening, clear) in &start {
+            for (opening, clear) in &read.start {
                 own[opening.0].clear_width = *clear;
             }
-            self.schedule(&actions, &own);
+            self.schedule(&read.actions, &own);
             if tactic == Some(tactic_sheet.named.name.value.as_str()) {
-                played = Some((actions, start));
+                played = Some(read);
             }
         }
-        match (tactic, played) {
-            (Some(_), Some((actions, start))) => {
-                for (opening, clear) in start {
-                    openings[opening.0].clear_width = clear;
+        let read = match (tactic, played) {
+            (Some(_), Some(read)) => read,
+            (tactic, _) => {
+                match tactic {
+                    Some(name) => self.no_tactic(name),
+                    None => self.schedule(&base, openings),
                 }
-                sorted(actions)
+                Tactic {
+                    actions: base,
+                    start: Vec::new(),
+                    holds: Vec::new(),
+                }
             }
-            (Some(name), None) => {
-                self.no_tactic(name);
-                sorted(base)
-            }
-            (None, _) => {
-                self.schedule(&base, openings);
-                sorted(base)
-            }
+        };
+        for (opening, clear) in &read.start {
+            openings[opening.0].clear_width = *clear;
         }
+        all_in_order(read, giving_way, openings)
     }
 
     fn no_tactic(&mut self, name: &str) {
@@ -69,57 +107,111 @@ impl Resolver<'_> {
     }
 
     /// Actions of a list, with names that differ.
-    fn placed(&mut self, list: &[Values], openings: &[Opening]) -> Vec<Placed> {
+    fn placed(&mut self, list: &[Values], openings: &[Opening], rooms: &[Room]) -> Vec<Placed> {
         let mut placed: Vec<Placed> = Vec::new();
         for values in list {
-            let Some(action) = self.action(values, openings) else {
+            let Some(done) = self.action(values, openings, rooms) else {
                 continue;
             };
-            let plain = names::plain(&action.name);
+            let now = Placed {
+                done,
+                span: values.span(if values.has("at") { "at" } else { "when" }),
+            };
+            let plain = names::plain(now.name());
             let first = placed
                 .iter()
-                .find(|other| names::plain(&other.action.name) == plain);
+                .find(|other| names::plain(other.name()) == plain);
             if let Some(first) = first {
                 let span = values.span("name");
-                let fault = same_name("action", &first.action.name, &action.name, span);
+                let fault = same_name("action", first.name(), now.name(), span);
                 self.note(fault);
             }
-            placed.push(Placed {
-                action,
-                span: values.span("at"),
-            });
+            placed.push(now);
         }
         placed
     }
 
-    fn action(&mut self, values: &Values, openings: &[Opening]) -> Option<Action> {
-        let verbs: Vec<&str> = ["open", "shut", "set"]
-            .into_iter()
-            .filter(|verb| values.has(verb))
-            .collect();
+    fn action(&mut self, values: &Values, openings: &[Opening], rooms: &[Room]) -> Option<Done> {
+        let verbs: Vec<&str> = VERBS.into_iter().filter(|verb| values.has(verb)).collect();
         let [verb] = verbs[..] else {
             self.verbs(values, &verbs);
             return None;
         };
+        self.moment_of(values);
         let time = values.number("at");
         self.within_run(values, time);
-        let opening = values
-            .name(verb)
-            .and_then(|name| self.movable(&name, openings));
+        let effect = self.effect(values, verb, openings);
+        let condition = if values.has("when") && !values.has("at") {
+            self.condition(values, rooms)
+        } else {
+            None
+        };
+        let (effect, what) = effect?;
+        let name = values.text("name")?.to_owned();
+        let over = values.number("over")?;
+        let because = values.text("because").map(str::to_owned);
+        if let Some(time) = time {
+            return Some(Done::At(Action {
+                name,
+                time,
+                over,
+                effect,
+                what,
+                because,
+            }));
+        }
+        let condition = condition?;
+        Some(Done::When(Trigger {
+            name,
+            watched: condition.watched,
+            rising: condition.rising,
+            level: condition.level,
+            not_before: values.number("not_before").unwrap_or(0.0),
+            delay: values.number("delay").unwrap_or(0.0),
+            over,
+            effect,
+            only_widens: false,
+            what,
+            because,
+        }))
+    }
+
+    /// An action is done at a time or when something comes true.
+    fn moment_of(&mut self, values: &Values) {
+        if !values.has("at") && !values.has("when") {
+            let because = "an action has a time or a condition";
+            self.note(wanted(values, "at", because));
+        }
+        if values.has("at") {
+            for key in ["when", "not_before", "delay"] {
+                if values.has(key) {
+                    self.note(unwanted(values, key, "`at` is the time itself"));
+                }
+            }
+        }
+    }
+
+    /// What is changed, and the words for it.
+    fn effect(
+        &mut self,
+        values: &Values,
+        verb: &str,
+        openings: &[Opening],
+    ) -> Option<(Effect, String)> {
+        let name = values.name(verb);
+        if verb == "start" || verb == "stop" {
+            if values.has("to") {
+                self.note(unwanted(values, "to", "a fan has no position"));
+            }
+            let fan: FanId = self.fan_id(&name?)?;
+            let running = verb == "start";
+            return Some((Effect::Fan { fan, running }, verb.to_owned()));
+        }
+        let opening = name.and_then(|name| self.movable(&name, openings));
         let opened = self.target(values, verb)?;
         let opening = opening?;
-        let clear_width = self.clear_width(&opened, openings[opening.0].width)?;
-        Some(Action {
-            name: values.text("name")?.to_owned(),
-            time: time?,
-            over: values.number("over")?,
-            effect: Effect::ClearWidth {
-                opening,
-                width: clear_width,
-            },
-            what: opened.value.text,
-            because: values.text("because").map(str::to_owned),
-        })
+        let width = self.clear_width(&opened, openings[opening.0].width)?;
+        Some((Effect::ClearWidth { opening, width }, opened.value.text))
     }
 
     fn verbs(&mut self, values: &Values, verbs: &[&str]) {
@@ -136,7 +228,7 @@ impl Resolver<'_> {
                 "this action does nothing",
             )
             .label("in this table")
-            .help("say what is done: `open = \"front_door\"`, `shut = ...`, or `set = ...` with `to = \"hand's width\"`"),
+            .help("say what is done: `open = \"front_door\"`, `shut = ...`, `set = ...` with `to = \"hand's width\"`, or `start`, `stop` a fan"),
         };
         self.note(fault);
     }
@@ -162,12 +254,16 @@ impl Resolver<'_> {
         })
     }
 
-    /// An opening that can be moved.
-    fn movable(&mut self, name: &Located<String>, openings: &[Opening]) -> Option<OpeningId> {
+    /// Index of an opening by name; a fault when there is none.
+    pub(super) fn opening_id(
+        &mut self,
+        name: &Located<String>,
+        openings: &[Opening],
+    ) -> Option<OpeningId> {
         let index = openings
             .iter()
             .position(|opening| opening.name == name.value);
-        let Some(index) = index else {
+        if index.is_none() {
             let sheet: &Sheet = self.sheet;
             let known: Vec<&str> = sheet
                 .openings
@@ -175,20 +271,31 @@ impl Resolver<'_> {
                 .map(|opening| opening.name.value.as_str())
                 .collect();
             self.unknown(Of::Opening, name, &known);
-            return None;
-        };
-        if openings[index].kind == OpeningKind::Gap {
-            self.note(
-                Fault::error(
-                    code::ACTION,
-                    name.span.clone(),
-                    format!("\"{}\" is a gap and cannot be moved", name.value),
-                )
-                .help("give the opening kind = \"door\" or kind = \"window\""),
-            );
-            return None;
         }
-        Some(OpeningId(index))
+        index.map(OpeningId)
+    }
+
+    /// An opening that can be moved.
+    fn movable(&mut self, name: &Located<String>, openings: &[Opening]) -> Option<OpeningId> {
+        let id = self.opening_id(name, openings)?;
+        let (what, help) = match openings[id.0].kind {
+            OpeningKind::Gap => (
+                "a gap",
+                "give the opening kind = \"door\" or kind = \"window\"",
+            ),
+            OpeningKind::Stair => ("a stair", "put a door or hatch at its foot or head"),
+            OpeningKind::Division => ("a division", "put a door there"),
+            OpeningKind::Door | OpeningKind::Window | OpeningKind::Hatch => return Some(id),
+        };
+        self.note(
+            Fault::error(
+                code::ACTION,
+                name.span.clone(),
+                format!("\"{}\" is {what} and cannot be moved", name.value),
+            )
+            .help(help),
+        );
+        None
     }
 
     fn within_run(&mut self, values: &Values, time: Option<f64>) {
@@ -208,15 +315,16 @@ impl Resolver<'_> {
         }
     }
 
-    /// Actions and starting positions of a tactic.
+    /// Actions, starting positions and what holds in a tactic.
     fn tactic(
         &mut self,
         tactic: &TacticSheet,
         base: &[Placed],
         openings: &[Opening],
-    ) -> (Vec<Placed>, Vec<(OpeningId, f64)>) {
+        rooms: &[Room],
+    ) -> Tactic {
         let values = &tactic.named.values;
-        let own = self.placed(&tactic.actions, openings);
+        let own = self.placed(&tactic.actions, openings, rooms);
         let sheet: &Sheet = self.sheet;
         let known: Vec<&str> = sheet
             .actions
@@ -229,10 +337,10 @@ impl Resolver<'_> {
             }
         }
         let dropped = |name: &str| values.names("drop").iter().any(|drop| drop.value == name);
-        let replaced = |name: &str| own.iter().any(|other| other.action.name == name);
+        let replaced = |name: &str| own.iter().any(|other| other.name() == name);
         let mut actions: Vec<Placed> = base
             .iter()
-            .filter(|placed| !dropped(&placed.action.name) && !replaced(&placed.action.name))
+            .filter(|placed| !dropped(placed.name()) && !replaced(placed.name()))
             .cloned()
             .collect();
         actions.extend(own.iter().cloned());
@@ -245,27 +353,51 @@ impl Resolver<'_> {
                 start.push((opening, clear));
             }
         }
-        if tactic.actions.is_empty() && !values.has("drop") && !values.has("start") {
+        let holds = values
+            .names("holds")
+            .iter()
+            .filter_map(|name| self.opening_id(name, openings))
+            .collect();
+        let changes = ["drop", "start", "holds", "wind"];
+        if tactic.actions.is_empty() && !changes.iter().any(|key| values.has(key)) {
             self.note(
                 Fault::caution(
                     tactic.named.name.span.clone(),
                     format!("tactic \"{}\" changes nothing", tactic.named.name.value),
                 )
-                .help("give it actions, `drop` or `start`"),
+                .help("give it actions, `drop`, `start`, `holds` or `wind`"),
             );
         }
-        (actions, start)
+        Tactic {
+            actions,
+            start,
+            holds,
+        }
     }
 
     /// One door makes one movement at a time, and each should change something.
+    /// What waits for a condition comes at no known time and is left out.
     fn schedule(&mut self, actions: &[Placed], openings: &[Opening]) {
-        let mut placed: Vec<&Placed> = actions.iter().collect();
-        placed.sort_by(|a, b| a.action.time.total_cmp(&b.action.time));
-        let mut moving = vec![(f64::NEG_INFINITY, 0.0); openings.len()];
-        for (state, opening) in moving.iter_mut().zip(openings) {
-            state.1 = opening.clear_width;
-        }
-        for Placed { action, span } in placed {
+        let mut placed: Vec<(&Action, &Range<usize>)> = actions
+            .iter()
+            .filter_map(|placed| match &placed.done {
+                Done::At(action) => Some((action, &placed.span)),
+                Done::When(_) => None,
+            })
+            .collect();
+        placed.sort_by(|a, b| a.0.time.total_cmp(&b.0.time));
+        let waited_for: Vec<OpeningId> = actions
+            .iter()
+            .filter_map(|placed| match &placed.done {
+                Done::When(trigger) => trigger.effect.opening(),
+                Done::At(_) => None,
+            })
+            .collect();
+        let mut moving: Vec<(f64, f64)> = openings
+            .iter()
+            .map(|opening| (f64::NEG_INFINITY, opening.clear_width))
+            .collect();
+        for (action, span) in placed {
             let Effect::ClearWidth { opening, width } = action.effect else {
                 continue;
             };
@@ -281,7 +413,7 @@ impl Resolver<'_> {
                     .label(format!("until {until} s"))
                     .help("begin later, or let the movement before take less time"),
                 );
-            } else if width == clear {
+            } else if width == clear && !waited_for.contains(&opening) {
                 self.note(
                     Fault::caution(
                         span.clone(),
@@ -298,8 +430,44 @@ impl Resolver<'_> {
     }
 }
 
-/// In the order they happen; equal times in the order of the file.
-fn sorted(mut placed: Vec<Placed>) -> Vec<Action> {
-    placed.sort_by(|a, b| a.action.time.total_cmp(&b.action.time));
-    placed.into_iter().map(|placed| placed.action).collect()
+/// Actions in the order they happen, equal times in the order of the file, and
+/// triggers; what gives way by itself comes after what people do. A pane that
+/// falls out of a window that is open as wide by then is left out.
+fn all_in_order(
+    tactic: Tactic,
+    giving_way: GivingWay,
+    openings: &[Opening],
+) -> (Vec<Action>, Vec<Trigger>) {
+    let (mut actions, mut triggers) = (Vec::new(), Vec::new());
+    for placed in tactic.actions {
+        match placed.done {
+            Done::At(action) => actions.push(action),
+            Done::When(trigger) => triggers.push(trigger),
+        }
+    }
+    actions.sort_by(|a, b| a.time.total_cmp(&b.time));
+    let gives = |effect: &Effect| {
+        effect
+            .opening()
+            .is_some_and(|id| !tactic.holds.contains(&id))
+    };
+    triggers.extend(giving_way.triggers.into_iter().filter(|t| gives(&t.effect)));
+    for action in giving_way.actions.into_iter().filter(|a| gives(&a.effect)) {
+        let Effect::ClearWidth { opening, width } = action.effect else {
+            continue;
+        };
+        let before = actions
+            .iter()
+            .rev()
+            .filter(|other| other.time <= action.time)
+            .find_map(|other| match other.effect {
+                Effect::ClearWidth { opening: id, width } if id == opening => Some(width),
+                _ => None,
+            });
+        if width > before.unwrap_or(openings[opening.0].clear_width) {
+            actions.push(action);
+            actions.sort_by(|a, b| a.time.total_cmp(&b.time));
+        }
+    }
+    (actions, triggers)
 }

@@ -32,7 +32,7 @@ impl Resolver<'_> {
                             room.name
                         ),
                     )
-                    .help("split it into two rooms joined by an opening as large as its section"),
+                    .help("split it into two rooms joined by an opening of kind = \"division\""),
                 );
             }
             if room.height > HIGH_ROOM {
@@ -52,6 +52,7 @@ impl Resolver<'_> {
             }
         }
         self.air_tight(plan);
+        self.unused(plan);
         self.unused_linings(plan);
     }
 
@@ -96,7 +97,7 @@ impl Resolver<'_> {
             .openings
             .iter()
             .filter(|opening| opening.from == Space::OpenAir || opening.to == Space::OpenAir)
-            .map(|opening| opening.gap_area + opening.clear_width * (opening.head - opening.sill))
+            .map(|opening| opening.gap_area + open_area(opening))
             .sum();
         let floor: f64 = plan.rooms.iter().map(crate::plan::Room::floor_area).sum();
         if !plan.items.is_empty() && outward < TIGHT * floor {
@@ -110,6 +111,44 @@ impl Resolver<'_> {
                 )
                 .help("add [leakage.house]; a dwelling of 100 m2 has about 0.03 to 0.1 m2"),
             );
+        }
+    }
+
+    /// Facades, glass and fans that do nothing.
+    fn unused(&mut self, plan: &Plan) {
+        let sheet: &Sheet = self.sheet;
+        let names = |key: &str, name: &str| {
+            let tables = sheet.openings.iter().chain(&sheet.leakages);
+            tables
+                .filter(|named| named.values.table.field(key).is_some())
+                .any(|named| named.values.text(key) == Some(name))
+        };
+        for (what, key, things) in [
+            ("facade", "facade", &sheet.facades),
+            ("glass", "glass", &sheet.glass),
+        ] {
+            for own in things.iter().filter(|own| !names(key, &own.name.value)) {
+                self.note(
+                    Fault::caution(
+                        own.name.span.clone(),
+                        format!("{what} \"{}\" is not used", own.name.value),
+                    )
+                    .help("name it in an opening, or take it out"),
+                );
+            }
+        }
+        for (own, fan) in sheet.fans.iter().zip(&plan.fans) {
+            let starts = |values: &super::Values| values.text("start") == Some(&fan.name);
+            let of_tactics = sheet.tactics.iter().flat_map(|tactic| &tactic.actions);
+            if !fan.running && !sheet.actions.iter().chain(of_tactics).any(starts) {
+                self.note(
+                    Fault::caution(
+                        own.name.span.clone(),
+                        format!("fan \"{}\" never runs", fan.name),
+                    )
+                    .help("add an action that starts it, or `running = true`"),
+                );
+            }
         }
     }
 
@@ -144,7 +183,16 @@ pub(in super::super) fn energy(item: &Item, fuel: &crate::plan::Fuel) -> f64 {
     item.mass * (1.0 - fuel.residue_share) * per_mass
 }
 
-/// Whether an opening is a door or window that stands open at ignition.
+/// Area that stands open at ignition, m2, gaps left aside.
+pub(in super::super) fn open_area(opening: &crate::plan::Opening) -> f64 {
+    if opening.kind.is_horizontal() {
+        opening.area * opening.clear_width / opening.width
+    } else {
+        opening.clear_width * (opening.head - opening.sill)
+    }
+}
+
+/// Whether an opening stands open at ignition, gaps left aside.
 pub(in super::super) fn stands_open(opening: &crate::plan::Opening) -> bool {
     opening.kind != OpeningKind::Gap && opening.clear_width > 0.0
 }

@@ -2,9 +2,8 @@
 
 use super::super::fault::{Fault, code};
 use super::super::fields::Of;
-use super::super::read::{Located, Sheet, Values};
+use super::super::read::{Located, Named, Sheet, Values};
 use super::{Resolver, UNREAD};
-use crate::catalogue::catalogue;
 use crate::plan::{Course, Fuel, Lining};
 use std::ops::Range;
 
@@ -48,13 +47,9 @@ impl Resolver<'_> {
             .iter()
             .find(|lining| lining.name.value == name.value);
         if let Some(own) = own {
-            return Lining {
-                name: name.value,
-                emissivity: own.values.number("emissivity").unwrap_or(UNREAD),
-                courses: own.values.tables("courses").iter().map(course).collect(),
-            };
+            return own_lining(own);
         }
-        if let Some(row) = catalogue().lining(&name.value) {
+        if let Some(row) = self.catalogue.lining(&name.value) {
             return row.lining.clone();
         }
         let known: Vec<&str> = sheet
@@ -62,7 +57,7 @@ impl Resolver<'_> {
             .iter()
             .map(|lining| lining.name.value.as_str())
             .chain(
-                catalogue()
+                self.catalogue
                     .linings
                     .iter()
                     .map(|row| row.lining.name.as_str()),
@@ -84,13 +79,18 @@ impl Resolver<'_> {
             .iter()
             .find(|fuel| fuel.name.value == name.value);
         let Some(own) = own else {
-            let found = catalogue().fuel(&name.value).map(|row| row.fuel.clone());
+            let found = self.catalogue.fuel(&name.value).map(|row| row.fuel.clone());
             if found.is_none() {
                 let known: Vec<&str> = sheet
                     .fuels
                     .iter()
                     .map(|fuel| fuel.name.value.as_str())
-                    .chain(catalogue().fuels.iter().map(|row| row.fuel.name.as_str()))
+                    .chain(
+                        self.catalogue
+                            .fuels
+                            .iter()
+                            .map(|row| row.fuel.name.as_str()),
+                    )
                     .collect();
                 self.unknown(Of::Fuel, name, &known);
             }
@@ -99,7 +99,7 @@ impl Resolver<'_> {
         let base = match own.values.name("like") {
             // A fuel that is like its own name means the catalogue's.
             Some(like) if like.value == name.value => {
-                let found = catalogue().fuel(&like.value).map(|row| row.fuel.clone());
+                let found = self.catalogue.fuel(&like.value).map(|row| row.fuel.clone());
                 if found.is_none() {
                     self.unknown(Of::Fuel, &like, &[]);
                 }
@@ -235,6 +235,15 @@ impl Resolver<'_> {
                 .help("check the formula against the complete net heat of the volatiles"),
             );
         }
+    }
+}
+
+/// A lining from its own table.
+pub(super) fn own_lining(own: &Named) -> Lining {
+    Lining {
+        name: own.name.value.clone(),
+        emissivity: own.values.number("emissivity").unwrap_or(UNREAD),
+        courses: own.values.tables("courses").iter().map(course).collect(),
     }
 }
 

@@ -3,20 +3,27 @@
 
 mod actions;
 mod cautions;
+mod conditions;
+mod fans;
+mod flat;
+mod gives_way;
 mod items;
+mod leakage;
 mod materials;
 mod openings;
 mod rooms;
 mod stations;
+mod wind;
 
-pub(super) use cautions::{energy, stands_open};
+pub(super) use cautions::{energy, open_area, stands_open};
+pub(super) use conditions::{HEAT_RELEASE, LAYER_TEMPERATURE, OXYGEN, SMOKE_LEVEL};
 
 use super::fault::{Fault, code};
 use super::fields::{KNOBS, Knob, Of};
 use super::names;
 use super::read::{Located, Named, Sheet, Values};
-use crate::catalogue::catalogue;
-use crate::plan::{Choices, OpenAir, PlacementRule, Plan, PlumeModel, RoomId};
+use crate::catalogue::Catalogue;
+use crate::plan::{Choices, Fuel, Lining, OpenAir, PlacementRule, Plan, PlumeModel, RoomId};
 use std::ops::Range;
 
 /// Value that stands in for one that could not be read; the plan it ends up
@@ -26,17 +33,47 @@ const UNREAD: f64 = 1.0;
 /// The sheet and the faults found so far.
 struct Resolver<'a> {
     sheet: &'a Sheet,
+    catalogue: &'a Catalogue,
     faults: Vec<Fault>,
 }
 
 /// Resolves a sheet; the plan counts only when no error is among the faults.
-pub(super) fn resolve(sheet: &Sheet, tactic: Option<&str>) -> (Plan, Vec<Fault>) {
+pub(super) fn resolve(
+    sheet: &Sheet,
+    catalogue: &Catalogue,
+    tactic: Option<&str>,
+) -> (Plan, Vec<Fault>) {
     let mut resolver = Resolver {
         sheet,
+        catalogue,
         faults: Vec::new(),
     };
     let plan = resolver.plan(tactic);
     (plan, resolver.faults)
+}
+
+/// Fuels and linings of a user's own models file.
+pub(super) fn materials(
+    fuels: &[Named],
+    linings: &[Named],
+    faults: &mut Vec<Fault>,
+) -> (Vec<Fuel>, Vec<Lining>) {
+    let sheet = Sheet::of_materials(fuels, linings);
+    let mut resolver = Resolver {
+        sheet: &sheet,
+        catalogue: crate::catalogue::catalogue(),
+        faults: Vec::new(),
+    };
+    resolver.same_among("fuel", sheet.fuels.iter().map(|own| &own.name));
+    resolver.same_among("lining", sheet.linings.iter().map(|own| &own.name));
+    let own: Vec<Fuel> = sheet
+        .fuels
+        .iter()
+        .filter_map(|named| resolver.fuel(&named.name))
+        .collect();
+    let linings = sheet.linings.iter().map(materials::own_lining).collect();
+    faults.append(&mut resolver.faults);
+    (own, linings)
 }
 
 impl<'a> Resolver<'a> {
@@ -52,9 +89,11 @@ impl<'a> Resolver<'a> {
         let mut openings = self.openings(&rooms);
         let (fuels, items) = self.items(&rooms);
         let stations = self.stations(&rooms);
-        let actions = self.played(&mut openings, tactic);
-        let leaks = self.leakage(&rooms);
+        let fans = self.fans(&openings, &rooms);
+        let (actions, triggers) = self.played(&mut openings, &rooms, tactic);
+        let leaks = self.leakage(&rooms, &open_air);
         openings.extend(leaks);
+        self.wind(&mut openings, &open_air, tactic);
         self.same_opening_names(&openings);
         let plan = Plan {
             title: self.sheet.root.text("title").unwrap_or_default().to_owned(),
@@ -66,9 +105,9 @@ impl<'a> Resolver<'a> {
             fuels,
             items,
             stations,
-            fans: Vec::new(),
+            fans,
             actions,
-            triggers: Vec::new(),
+            triggers,
             choices: self.choices(),
             tactic: tactic.map(str::to_owned),
         };
@@ -90,7 +129,7 @@ impl<'a> Resolver<'a> {
                     .help("add one: [room.bedroom] with width, length and height"),
             );
         }
-        let kinds: [(&str, &[Named]); 8] = [
+        let kinds: [(&str, &[Named]); 11] = [
             ("room", &sheet.rooms),
             ("lining", &sheet.linings),
             ("shared wall", &sheet.shared_walls),
@@ -99,15 +138,20 @@ impl<'a> Resolver<'a> {
             ("item", &sheet.items),
             ("fuel", &sheet.fuels),
             ("station", &sheet.stations),
+            ("facade", &sheet.facades),
+            ("fan", &sheet.fans),
+            ("glass", &sheet.glass),
         ];
         for (what, things) in kinds {
             self.same_among(what, things.iter().map(|thing| &thing.name));
         }
-        let catalogue = catalogue();
+        let catalogue = self.catalogue;
         let linings = catalogue.linings.iter().map(|row| row.lining.name.as_str());
         self.nearly_catalogue("lining", &sheet.linings, linings);
         let fuels = catalogue.fuels.iter().map(|row| row.fuel.name.as_str());
         self.nearly_catalogue("fuel", &sheet.fuels, fuels);
+        let glass = catalogue.glass.iter().map(|row| row.pane.name.as_str());
+        self.nearly_catalogue("glass", &sheet.glass, glass);
         self.same_among(
             "tactic",
             sheet.tactics.iter().map(|sheet| &sheet.named.name),

@@ -1,21 +1,28 @@
-//! Doors, windows, gaps and leakage.
+//! Doors, windows and gaps; what all openings have.
 
 use super::super::fault::{Fault, code};
 use super::super::fields::{OPEN_AIR_NAME, Of};
-use super::super::names;
 use super::super::read::{Located, Named, Opened, Sheet, Values};
-use super::{Resolver, UNREAD, same_name, unwanted, wanted};
-use crate::catalogue::catalogue;
-use crate::plan::{Opening, OpeningKind, Room, Space};
+use super::{Resolver, UNREAD, unwanted, wanted};
+use crate::plan::{Opening, OpeningKind, Pane, Room, RoomId, Space};
 use crate::units::{Dimension, write};
 
-/// Most openings, gaps of leakage included.
-const MOST_OPENINGS: usize = 400;
+/// Exchange through a stair over that of a square hole, from memory (1 to 5).
+const STAIR_EXCHANGE: f64 = 3.0;
+
+/// Edges (m above the floor of the first room), width (m) and plan area (m2).
+pub(super) struct Outline {
+    pub(super) sill: f64,
+    pub(super) head: f64,
+    pub(super) width: f64,
+    pub(super) area: f64,
+}
+
 /// Lengths that differ by less are equal, m.
-const HAIR: f64 = 1e-9;
+pub(super) const HAIR: f64 = 1e-9;
 
 /// A length for people, rounded down so that it may be written as it stands.
-fn text(length: f64) -> String {
+pub(super) fn text(length: f64) -> String {
     write((length * 1000.0 + HAIR).floor() / 1000.0, Dimension::Length)
 }
 
@@ -34,30 +41,123 @@ impl Resolver<'_> {
         let kind = match values.text("kind") {
             Some("window") => OpeningKind::Window,
             Some("gap") => OpeningKind::Gap,
+            Some("hatch") => OpeningKind::Hatch,
+            Some("stair") => OpeningKind::Stair,
+            Some("division") => OpeningKind::Division,
             _ => OpeningKind::Door,
         };
         let (from, to) = self.sides(values);
-        let width = self.opening_width(values, kind);
+        self.keys_of(values, kind);
+        let outline = match kind {
+            OpeningKind::Hatch | OpeningKind::Stair => self.lying(values, kind, from, rooms),
+            OpeningKind::Division => self.border(values, [from, to], rooms),
+            _ => self.upright(values, kind),
+        };
+        let exchange = if kind == OpeningKind::Stair {
+            STAIR_EXCHANGE
+        } else {
+            1.0
+        };
         let opening = Opening {
             name: named.name.value.clone(),
             kind,
             from,
             to,
-            sill: values.number("sill").unwrap_or(0.0),
-            head: values.number("head").unwrap_or(UNREAD),
-            width: width.unwrap_or(0.0),
+            sill: outline.sill,
+            head: outline.head,
+            width: outline.width,
             coefficient: values.number("coefficient").unwrap_or(UNREAD),
-            clear_width: self.clear_at_start(values, kind, width),
+            clear_width: self.clear_at_start(values, kind, outline.width),
             gap_area: self.gap_area(values, kind, from, to),
             gap_coefficient: values.number("gap_coefficient").unwrap_or(UNREAD),
             at: values.two("at"),
             wind_pressure: 0.0,
-            area: 0.0,
-            exchange_factor: 1.0,
-            pane: None,
+            area: outline.area,
+            exchange_factor: values.number("exchange_factor").unwrap_or(exchange),
+            pane: self.pane(values),
         };
-        self.opening_fits(values, &opening, rooms);
+        if kind.is_horizontal() {
+            self.lies_between(values, &opening, rooms);
+        } else if kind != OpeningKind::Division {
+            self.opening_fits(values, &opening, rooms);
+        }
         opening
+    }
+
+    /// Keys that mean nothing for this kind of opening.
+    fn keys_of(&mut self, values: &Values, kind: OpeningKind) {
+        use OpeningKind::{Division, Door, Gap, Hatch, Stair, Window};
+        let cases: [(&[&str], &[OpeningKind], &str); 8] = [
+            (&["width"], &[Gap], "a gap is only an area"),
+            (
+                &["position"],
+                &[Gap, Stair, Division],
+                "it is always open as it is",
+            ),
+            (
+                &["head", "sill"],
+                &[Hatch, Stair],
+                "it lies flat, in the ceiling of the lower room",
+            ),
+            (
+                &["head", "sill"],
+                &[Division],
+                "it goes from floor to ceiling",
+            ),
+            (
+                &["area", "exchange_factor"],
+                &[Door, Window, Gap, Division],
+                "only a hatch or stair has it",
+            ),
+            (
+                &["length"],
+                &[Door, Window, Gap, Stair, Division],
+                "only a hatch has it",
+            ),
+            (
+                &["glass", "falls_out"],
+                &[Door, Gap, Hatch, Stair, Division],
+                "only a window has it",
+            ),
+            (
+                &["leaf", "fails"],
+                &[Window, Gap, Hatch, Stair, Division],
+                "only a door has it",
+            ),
+        ];
+        for (keys, kinds, because) in cases {
+            for key in keys.iter().filter(|_| kinds.contains(&kind)) {
+                if values.has(key) {
+                    self.note(unwanted(values, key, because));
+                }
+            }
+        }
+    }
+
+    /// Edges and width of a door, window or gap.
+    fn upright(&mut self, values: &Values, kind: OpeningKind) -> Outline {
+        if kind != OpeningKind::Gap && !values.has("width") {
+            let because = "a door or window has a clear width";
+            self.note(wanted(values, "width", because));
+        }
+        if !values.has("head") {
+            self.note(wanted(values, "head", "an opening has an upper edge"));
+        }
+        Outline {
+            sill: values.number("sill").unwrap_or(0.0),
+            head: values.number("head").unwrap_or(UNREAD),
+            width: match kind {
+                OpeningKind::Gap => 0.0,
+                _ => values.number("width").unwrap_or(0.0),
+            },
+            area: 0.0,
+        }
+    }
+
+    /// Glass of a window.
+    fn pane(&mut self, values: &Values) -> Option<Pane> {
+        let name = values.name("glass")?;
+        self.glass(&name).map(|row| row.pane)
     }
 
     /// Both sides; the open air stands in for what could not be read.
@@ -94,7 +194,7 @@ impl Resolver<'_> {
         }
     }
 
-    fn side(&mut self, name: &Located<String>) -> Option<Space> {
+    pub(super) fn side(&mut self, name: &Located<String>) -> Option<Space> {
         if name.value == OPEN_AIR_NAME {
             return Some(Space::OpenAir);
         }
@@ -112,31 +212,11 @@ impl Resolver<'_> {
         None
     }
 
-    fn opening_width(&mut self, values: &Values, kind: OpeningKind) -> Option<f64> {
-        if kind == OpeningKind::Gap {
-            for key in ["width", "position"] {
-                if values.has(key) {
-                    self.note(unwanted(values, key, "a gap is only an area"));
-                }
-            }
-            return None;
-        }
-        if !values.has("width") {
-            self.note(wanted(
-                values,
-                "width",
-                "a door or window has a clear width",
-            ));
-        }
-        values.number("width")
-    }
-
-    fn clear_at_start(&mut self, values: &Values, kind: OpeningKind, width: Option<f64>) -> f64 {
-        match (kind, width, values.opened("position")) {
-            (OpeningKind::Door | OpeningKind::Window, Some(width), Some(opened)) => {
-                self.clear_width(&opened, width).unwrap_or(0.0)
-            }
-            _ => 0.0,
+    fn clear_at_start(&mut self, values: &Values, kind: OpeningKind, width: f64) -> f64 {
+        match (kind, values.opened("position")) {
+            (OpeningKind::Stair | OpeningKind::Division, _) => width,
+            (OpeningKind::Gap, _) | (_, None) => 0.0,
+            (_, Some(opened)) => self.clear_width(&opened, width).unwrap_or(0.0),
         }
     }
 
@@ -144,7 +224,7 @@ impl Resolver<'_> {
     pub(super) fn clear_width(&mut self, opened: &Located<Opened>, width: f64) -> Option<f64> {
         let clear = match opened.value.width {
             Some(clear) => clear,
-            None => catalogue().position(&opened.value.text)?.of(width),
+            None => self.catalogue.position(&opened.value.text)?.of(width),
         };
         if clear > width + HAIR {
             self.note(
@@ -179,54 +259,56 @@ impl Resolver<'_> {
             (None, OpeningKind::Door) => "interior door",
             (None, OpeningKind::Hatch | OpeningKind::Stair | OpeningKind::Division) => "none",
         };
-        catalogue().gap(name).unwrap_or(0.0)
+        self.catalogue.gap(name).unwrap_or(0.0)
     }
 
     fn opening_fits(&mut self, values: &Values, opening: &Opening, rooms: &[Room]) {
-        let readable = values.number("head").is_some() && values.number("sill").is_some();
+        let has_sill = !values.has("sill") || values.number("sill").is_some();
+        let readable = values.number("head").is_some() && has_sill;
         if readable && opening.sill >= opening.head {
             self.note(
                 Fault::error(
                     code::DOES_NOT_FIT,
-                    values.span("sill"),
+                    values.span(if values.has("sill") { "sill" } else { "head" }),
                     format!("the sill of \"{}\" is not below its head", opening.name),
                 )
                 .label(format!("the head is at {}", text(opening.head)))
                 .help("both are heights above the floor: head above sill"),
             );
         }
+        let Space::Room(first) = opening.from else {
+            return;
+        };
+        let level = |id: RoomId| rooms.get(id.0).map_or(0.0, |room| room.floor_level);
         for side in [opening.from, opening.to] {
             if let Space::Room(id) = side
                 && self.sized(id.0)
             {
-                self.opening_fits_room(values, opening, &rooms[id.0], readable);
+                let shift = level(first) - level(id);
+                self.opening_fits_room(values, opening, &rooms[id.0], readable.then_some(shift));
             }
         }
-        if let Space::Room(id) = opening.from {
-            self.place_fits(values, &rooms[id.0], id.0);
-        }
+        self.place_fits(values, &rooms[first.0], first.0);
     }
 
+    /// `shift` is how much higher the floor of the first room lies than that of
+    /// this one, m; `None` when the heights could not be read.
     fn opening_fits_room(
         &mut self,
         values: &Values,
         opening: &Opening,
         room: &Room,
-        readable: bool,
+        shift: Option<f64>,
     ) {
-        if readable && opening.head > room.height + HAIR {
-            self.note(
-                Fault::error(
-                    code::DOES_NOT_FIT,
-                    values.span("head"),
-                    format!(
-                        "opening \"{}\" is higher than room \"{}\"",
-                        opening.name, room.name
-                    ),
-                )
-                .label(format!("the room is {} high", text(room.height)))
-                .help(format!("write at most \"{}\"", text(room.height))),
-            );
+        if let Some(shift) = shift {
+            if opening.head + shift > room.height + HAIR {
+                let most = room.height - shift;
+                self.outside_of(values, "head", opening, room, "higher than", most, shift);
+            }
+            if opening.sill + shift < -HAIR {
+                let key = if values.has("sill") { "sill" } else { "head" };
+                self.outside_of(values, key, opening, room, "lower than", -shift, shift);
+            }
         }
         let side = room.width.max(room.length);
         if opening.width > side + HAIR {
@@ -243,6 +325,49 @@ impl Resolver<'_> {
                 .help(format!("write at most \"{}\"", text(side))),
             );
         }
+    }
+
+    /// An edge beyond the floor or ceiling of one of its rooms.
+    #[allow(clippy::too_many_arguments)]
+    fn outside_of(
+        &mut self,
+        values: &Values,
+        key: &str,
+        opening: &Opening,
+        room: &Room,
+        how: &str,
+        limit: f64,
+        shift: f64,
+    ) {
+        let (label, level) = if shift == 0.0 {
+            (format!("the room is {} high", text(room.height)), "")
+        } else {
+            (
+                format!(
+                    "its floor lies {} {}",
+                    text(shift.abs()),
+                    if shift > 0.0 { "lower" } else { "higher" }
+                ),
+                " above the floor of the first room",
+            )
+        };
+        let bound = if key == "head" && how == "higher than" {
+            "at most"
+        } else {
+            "at least"
+        };
+        self.note(
+            Fault::error(
+                code::DOES_NOT_FIT,
+                values.span(key),
+                format!(
+                    "opening \"{}\" is {how} room \"{}\"",
+                    opening.name, room.name
+                ),
+            )
+            .label(label)
+            .help(format!("write {bound} \"{}\"{level}", text(limit))),
+        );
     }
 
     /// A place lies inside its room.
@@ -264,92 +389,6 @@ impl Resolver<'_> {
                 ))
                 .help("the first number is along the room's width, the second along its length"),
             );
-        }
-    }
-
-    /// One gap over the full height of each room, by its share of the floor.
-    pub(super) fn leakage(&mut self, rooms: &[Room]) -> Vec<Opening> {
-        let sheet: &Sheet = self.sheet;
-        let mut leaks = Vec::new();
-        for named in &sheet.leakages {
-            let values = &named.values;
-            let to = values.name("to").and_then(|name| self.side(&name));
-            let ids: Vec<_> = values
-                .names("rooms")
-                .iter()
-                .filter_map(|name| self.room_id(name).map(|id| (id, name)))
-                .collect();
-            let floor: f64 = ids.iter().map(|(id, _)| rooms[id.0].floor_area()).sum();
-            for (index, (id, name)) in ids.iter().enumerate() {
-                let (room, from) = (&rooms[id.0], Space::Room(*id));
-                if ids[..index].iter().any(|(other, _)| other == id) {
-                    self.note(same_name(
-                        "room",
-                        &name.value,
-                        &name.value,
-                        name.span.clone(),
-                    ));
-                }
-                if to == Some(from) {
-                    self.note(
-                        Fault::error(
-                            code::CONTRADICTION,
-                            name.span.clone(),
-                            "a room cannot leak into itself",
-                        )
-                        .help("take it out of `rooms`, or change `to`"),
-                    );
-                }
-                leaks.push(Opening {
-                    name: format!("{} in {}", named.name.value, room.name),
-                    kind: OpeningKind::Gap,
-                    from,
-                    to: to.unwrap_or(Space::OpenAir),
-                    sill: 0.0,
-                    head: room.height,
-                    width: 0.0,
-                    coefficient: 0.7,
-                    clear_width: 0.0,
-                    gap_area: values.number("area").unwrap_or(0.0) * room.floor_area() / floor,
-                    gap_coefficient: values.number("coefficient").unwrap_or(UNREAD),
-                    at: None,
-                    wind_pressure: 0.0,
-                    area: 0.0,
-                    exchange_factor: 1.0,
-                    pane: None,
-                });
-            }
-        }
-        leaks
-    }
-
-    /// A gap made from leakage must not meet an opening of the same name, and
-    /// all of them together must not be too many.
-    pub(super) fn same_opening_names(&mut self, openings: &[Opening]) {
-        let sheet: &Sheet = self.sheet;
-        let told: Vec<String> = openings
-            .iter()
-            .map(|opening| names::plain(&opening.name))
-            .collect();
-        for (index, opening) in openings.iter().enumerate().skip(sheet.openings.len()) {
-            if let Some(first) = told[..index].iter().position(|name| *name == told[index]) {
-                let span = sheet
-                    .leakages
-                    .iter()
-                    .find(|leak| opening.name.starts_with(&leak.name.value))
-                    .map_or(0..0, |leak| leak.name.span.clone());
-                let fault = same_name("opening", &openings[first].name, &opening.name, span);
-                self.note(fault);
-            }
-        }
-        if openings.len() > MOST_OPENINGS {
-            self.note(Fault::elsewhere(
-                code::TOO_MUCH,
-                format!(
-                    "{} openings, gaps of leakage included; at most {MOST_OPENINGS} are taken",
-                    openings.len()
-                ),
-            ));
         }
     }
 }

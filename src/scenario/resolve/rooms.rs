@@ -23,7 +23,7 @@ impl Resolver<'_> {
                 width: values.number("width").unwrap_or(UNREAD),
                 length: values.number("length").unwrap_or(UNREAD),
                 height: values.number("height").unwrap_or(UNREAD),
-                floor_level: 0.0,
+                floor_level: values.number("floor_level").unwrap_or(0.0),
                 temperature: values.number("temperature").unwrap_or(indoors),
                 ceiling: self.lining(values, "ceiling"),
                 walls: self.lining(values, "walls"),

@@ -3,7 +3,6 @@
 use super::super::fault::{Fault, code};
 use super::super::read::{Named, Sheet};
 use super::{Resolver, UNREAD, wanted};
-use crate::catalogue::catalogue;
 use crate::plan::{Limits, Room, RoomId, Station};
 use crate::units::{Dimension, rounded};
 
@@ -27,7 +26,7 @@ impl Resolver<'_> {
         let posture = values.text("posture");
         let height = values
             .number("height")
-            .or_else(|| posture.and_then(|posture| catalogue().posture(posture)));
+            .or_else(|| posture.and_then(|posture| self.catalogue.posture(posture)));
         if let (Some(room), Some(height)) = (room, height) {
             self.under_ceiling(named, &rooms[room.0], room.0, height);
         }
