@@ -17,6 +17,7 @@ mod reader;
 mod rooms;
 mod stations;
 mod summary;
+mod ways;
 
 pub use flashover::{Answer, Flashover};
 pub use moment::{Band, Kind, Moment, Number, Since, Weight, spoken};
@@ -24,6 +25,7 @@ pub use summary::{
     Closures, Comeback, Extreme, FirstOpening, LimitSummary, RoomSummary, StationSummary, Stretch,
     Summary, Worst,
 };
+pub use ways::FlowSummary;
 
 use crate::plan::Plan;
 use crate::record::Record;
@@ -40,6 +42,7 @@ pub fn moments(record: &Record, plan: &Plan) -> Vec<Moment> {
     out.extend(actions::moments(&reader));
     out.extend(air::moments(&reader));
     out.extend(rooms::moments(&reader));
+    out.extend(ways::moments(&reader));
     out.extend(stations::moments(&reader));
     out.extend(actions::stopped(&reader));
     out.retain(|moment| moment.time.is_finite());

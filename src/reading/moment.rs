@@ -35,7 +35,7 @@ macro_rules! kinds {
 
 kinds! {
     Ignition, "ignition", "An item is lit.";
-    Action, "action", "The crew, or somebody, changes an opening.";
+    Action, "action", "The crew or somebody moves an opening or switches a fan, or glass or a door gives way.";
     SmokeAtDoorHead, "smoke_at_door_head", "The smoke level of a room comes down to its highest door or window head for the first time.";
     ShortOfAir, "short_of_air", "The heat burned is below half of the free rate.";
     FlamesOut, "flames_out", "The heat burned is below 5 % of the free rate.";
@@ -53,6 +53,10 @@ kinds! {
     LowOxygen, "low_oxygen", "The oxygen at a station's head height falls to its limit.";
     LowVisibility, "low_visibility", "The visibility at a station's head height falls to its limit.";
     HighPressure, "high_pressure", "The pressure in a room is beyond 500 Pa, where windows and doors may give way, which is not modelled.";
+    OneWay, "one_way", "The flow through an opening turns one-way: less than a fiftieth of it goes back.";
+    TwoWay, "two_way", "The flow through an opening goes both ways again.";
+    Mixed, "mixed", "Momentum mixes a room more than by half: there is no cool layer to stay low in.";
+    FlameOutside, "flame_outside", "Unburned gas burns outside an opening, with a flame above its head. What it does to the facade is not modelled.";
     BurnedOut, "burned_out", "Less than a twentieth of an item's fuel is left, or its given rate has ended.";
     Stopped, "stopped", "The run ended before the end of the scenario.";
 }

@@ -173,7 +173,7 @@ impl<'a> Reader<'a> {
         self.plan
             .openings
             .iter()
-            .filter(|opening| opening.kind != OpeningKind::Gap)
+            .filter(|opening| matches!(opening.kind, OpeningKind::Door | OpeningKind::Window))
             .filter_map(|opening| match (opening.from, opening.to) {
                 (Space::Room(from), _) if from.0 == room => Some((opening.head, &opening.name)),
                 (from, Space::Room(to)) if to.0 == room => {

@@ -8,6 +8,7 @@ use super::history::Side;
 use super::moment::{Band, Kind};
 use super::reader::Reader;
 use super::stations;
+use super::ways::{self, FlowSummary};
 use crate::record::{Closure, Dimension, Ended, Quantity, Subject};
 
 /// Rise of the layer temperature from which it counts, K \[choice\].
@@ -46,6 +47,8 @@ pub struct RoomSummary {
     pub hottest_layer: Option<Extreme>,
     /// Lowest smoke level, m above the floor.
     pub lowest_smoke_level: Option<Extreme>,
+    /// When momentum mixed it.
+    pub mixed: Vec<Stretch>,
     /// Flashover before the first opening, or over the whole run without one.
     pub flashover_before: Option<Flashover>,
     /// Flashover from the first opening on.
@@ -164,6 +167,8 @@ pub struct Summary {
     pub highest_pressure: Option<Extreme>,
     /// Rooms, in the order of the scenario.
     pub rooms: Vec<RoomSummary>,
+    /// Flow through openings, in the order of the scenario.
+    pub flow: Vec<FlowSummary>,
     /// Stations, in the order of the scenario.
     pub stations: Vec<StationSummary>,
     /// Closures of the ledger.
@@ -201,6 +206,7 @@ pub(super) fn read(reader: &Reader<'_>) -> Summary {
         rooms: (0..reader.plan.rooms.len())
             .map(|room| room_summary(reader, room, opened))
             .collect(),
+        flow: ways::summary(reader),
         stations: (0..reader.plan.stations.len())
             .filter_map(|station| station_summary(reader, station, opened))
             .collect(),
@@ -297,6 +303,7 @@ fn room_summary(reader: &Reader<'_>, room: usize, opened: Option<f64>) -> RoomSu
             .map_or_else(String::new, |r| r.name.clone()),
         hottest_layer: extreme(hottest),
         lowest_smoke_level: extreme(lowest),
+        mixed: ways::mixed_stretches(reader, room),
         flashover_before: flashover::read(reader, room, 0.0, opened.unwrap_or(reader.end)),
         flashover_after: opened
             .and_then(|opened| flashover::read(reader, room, opened, reader.end)),

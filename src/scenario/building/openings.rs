@@ -47,20 +47,20 @@ fn upright(opening: &Opening) -> String {
     let factor = |width| hand::opening_factor(width, height);
     let megawatts = |width| hand::air_limit(factor(width)) / 1e6;
     let now = if opening.kind == OpeningKind::Division {
-        "always open".to_owned()
+        "; always open".to_owned()
     } else if opening.clear_width <= 0.0 {
-        format!("now shut, gap {:.4} m2", opening.gap_area)
+        format!(" when open; now shut, gap {:.4} m2", opening.gap_area)
     } else if opening.clear_width < opening.width {
         format!(
-            "now {:.2} m clear, {:.2} MW",
+            " when open; now {:.2} m clear, {:.2} MW",
             opening.clear_width,
             megawatts(opening.clear_width)
         )
     } else {
-        "now open".to_owned()
+        " when open; now open".to_owned()
     };
     format!(
-        "{:.2} x {height:.2} m  A sqrt(H) {:.2} m5/2  {:.2} MW when open; {now}",
+        "{:.2} x {height:.2} m  A sqrt(H) {:.2} m5/2  {:.2} MW{now}",
         opening.width,
         factor(opening.width),
         megawatts(opening.width),

@@ -80,9 +80,9 @@ pub(in super::super) const FAN: Table = table(
         optional(
             "covers",
             Kind::Quantity(D::Ratio, 0.05, 1.0),
-            "0.8 for positive pressure",
+            "1 for positive pressure: its curve already counts what spills back",
             "Share of the open door that its cone covers; gas passes freely through the rest.",
-            "0.8",
+            "90 %",
         ),
         optional(
             "from",

@@ -6,8 +6,9 @@ use super::super::read::{Located, Named, Sheet, Values};
 use super::{Resolver, UNREAD, unwanted, wanted};
 use crate::plan::{Fan, FanId, FanKind, Opening, OpeningId, OpeningKind, Room, RoomId, Space};
 
-/// Share of the open door that the cone of a fan covers, own choice.
-const COVERS: f64 = 0.8;
+/// Share of the open door that the cone of a fan covers: all, since its net
+/// curve already counts what spills back.
+const COVERS: f64 = 1.0;
 /// Where intakes and outlets are by default: this share of the height off
 /// ceiling and floor.
 const MARGIN: f64 = 0.1;

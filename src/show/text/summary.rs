@@ -3,8 +3,8 @@
 use super::lines::{Page, glued};
 use super::values::{clock, metric, since};
 use crate::reading::{
-    Answer, Band, Comeback, Extreme, Flashover, LimitSummary, RoomSummary, StationSummary, Summary,
-    spoken,
+    Answer, Band, Comeback, Extreme, Flashover, FlowSummary, LimitSummary, RoomSummary,
+    StationSummary, Stretch, Summary, spoken,
 };
 use crate::record::{Dimension, Ended};
 
@@ -30,6 +30,9 @@ pub(super) fn write(page: &mut Page, summary: &Summary) {
         .collect();
     if !without.is_empty() {
         page.entry("no hot layer in", &without.join(", "));
+    }
+    for flow in &summary.flow {
+        page.entry(&spoken(&flow.name), &flow_words(flow));
     }
     for station in &summary.stations {
         station_words(page, summary, station);
@@ -90,18 +93,10 @@ fn fire(page: &mut Page, summary: &Summary) {
     if let Some(comeback) = summary.comeback {
         page.entry("", &comeback_words(summary, comeback));
     }
-    let stretches: Vec<String> = summary
-        .short_of_air
-        .iter()
-        .map(|stretch| match stretch.to {
-            Some(to) => format!("{} to {}", clock(stretch.from), clock(to)),
-            None => format!("{} to the end", clock(stretch.from)),
-        })
-        .collect();
-    let text = if stretches.is_empty() {
+    let text = if summary.short_of_air.is_empty() {
         "never in the model".to_owned()
     } else {
-        stretches.join(", ")
+        stretches(&summary.short_of_air)
     };
     page.entry("short of air", &text);
     if let Some(lowest) = summary.lowest_base_oxygen {
@@ -111,6 +106,43 @@ fn fire(page: &mut Page, summary: &Summary) {
         );
         page.entry("oxygen at the flame", &text);
     }
+}
+
+/// Stretches of time in words.
+fn stretches(all: &[Stretch]) -> String {
+    let all: Vec<String> = all
+        .iter()
+        .map(|stretch| match stretch.to {
+            Some(to) => format!("{} to {}", clock(stretch.from), clock(to)),
+            None => format!("{} to the end", clock(stretch.from)),
+        })
+        .collect();
+    all.join(", ")
+}
+
+/// Which way gas goes through an opening.
+fn flow_words(flow: &FlowSummary) -> String {
+    let most =
+        |extreme: Extreme, way: &str| format!("{way} up to {}", at(extreme, Dimension::MassFlow));
+    let mut parts = vec![
+        most(flow.strongest_forward, &flow.forward),
+        most(flow.strongest_backward, &flow.backward),
+    ];
+    for (when, way) in [
+        (&flow.only_forward, &flow.forward),
+        (&flow.only_backward, &flow.backward),
+    ] {
+        if !when.is_empty() {
+            parts.push(format!("all of it {way} {}", stretches(when)));
+        }
+    }
+    if let Some(flame) = flow.longest_flame {
+        parts.push(format!(
+            "flame up to {} above its head",
+            at(flame, Dimension::Length)
+        ));
+    }
+    parts.join("; ")
 }
 
 /// Whether and when the fire comes back.
@@ -148,6 +180,9 @@ fn room_words(summary: &Summary, room: &RoomSummary) -> Option<String> {
     if let Some(lowest) = room.lowest_smoke_level {
         let text = at_since(summary, lowest, Dimension::Length);
         parts.push(format!("smoke down to {text}"));
+    }
+    if !room.mixed.is_empty() {
+        parts.push(format!("mixed by momentum {}", stretches(&room.mixed)));
     }
     parts.extend(flashover_words(summary, room));
     (!parts.is_empty()).then(|| parts.join("; "))
