@@ -32,6 +32,8 @@ bad! {
     verify_bad_fuel, "fuel";
     verify_bad_wrong_kind, "wrong_kind";
     verify_bad_tactic, "tactic";
+    verify_bad_moving_air, "moving_air";
+    verify_bad_condition, "condition";
 }
 
 /// Nothing here keeps the scenario from running, and each caution is shown.
@@ -41,6 +43,20 @@ fn verify_cautions_do_not_stop_a_run() {
     let loaded = scenario::load_with_cautions("cautions.toml", text, None).unwrap();
     assert_eq!(loaded.cautions.errors().count(), 0);
     insta::assert_snapshot!("cautions", loaded.cautions.render(false, 80));
+}
+
+/// Faults of a models file are told in that file.
+#[test]
+fn verify_bad_models_file() {
+    let scenario = "title = \"Own models\"\nduration = \"1 min\"\nmodels = \"own.toml\"\n";
+    let models = include_str!("bad/models.toml").to_owned();
+    let beside = |_: &str| Ok(models.clone());
+    let report = scenario::load_beside("own_models.toml", scenario, None, &beside).unwrap_err();
+    assert_eq!(report.file_name(), "own.toml");
+    insta::assert_snapshot!("models", report.render(false, 80));
+    let none = |_: &str| Err("no such file".to_owned());
+    let report = scenario::load_beside("own_models.toml", scenario, None, &none).unwrap_err();
+    insta::assert_snapshot!("no_models", report.render(false, 80));
 }
 
 #[test]

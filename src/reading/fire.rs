@@ -178,8 +178,10 @@ pub(super) fn back_up(reader: &Reader<'_>) -> Vec<Moment> {
     let mut out = Vec::new();
     for (number, opening) in openings.iter().enumerate() {
         let from = opening.time;
-        let to = openings
-            .get(number + 1)
+        // A later opening on a fire that is back already does not end the wait.
+        let to = openings[number + 1..]
+            .iter()
+            .find(|next| starved_level(reader, next.time).is_some())
             .map_or(reader.end, |next| next.time);
         let Some(level) = starved_level(reader, from) else {
             continue;

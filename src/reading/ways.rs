@@ -14,6 +14,13 @@ use crate::record::{Dimension, Quantity, Subject};
 /// what a shut door leaks in a fire.
 const SMALLEST_FLOW: f64 = 0.1;
 
+/// Clear width from which an opening counts as open, m \[choice\].
+const AJAR: f64 = 0.01;
+
+/// Rise of the mean of the gas from which mixing is told, K \[choice\]: in cold
+/// rooms there are no layers to mix.
+const WARM: f64 = 10.0;
+
 /// Excess of one direction over the other, of their sum, from which the flow
 /// counts as one-way \[choice\]: less than a fiftieth goes back.
 const ONE_WAY: f64 = 0.96;
@@ -67,15 +74,16 @@ fn told<'a>(reader: &'a Reader<'_>) -> impl Iterator<Item = (usize, &'a Opening)
 }
 
 /// Excess of the forward flow over the backward one, of their sum; zero where
-/// little flows.
+/// little flows or the opening is shut.
 fn excess(reader: &Reader<'_>, index: usize) -> Vec<f64> {
     let of = |quantity| reader.record.get(Subject::Opening(index), quantity);
     of(Quantity::FlowForward)
         .iter()
         .zip(of(Quantity::FlowBackward))
-        .map(|(forward, backward)| {
+        .zip(of(Quantity::ClearWidth))
+        .map(|((forward, backward), clear)| {
             let sum = forward + backward;
-            if sum >= SMALLEST_FLOW {
+            if sum >= SMALLEST_FLOW && *clear >= AJAR {
                 (forward - backward) / sum
             } else {
                 0.0
@@ -104,11 +112,20 @@ fn turns(reader: &Reader<'_>, index: usize, opening: &Opening) -> Vec<Moment> {
     let subject = Subject::Opening(index);
     let name = spoken(&opening.name);
     let mut out = Vec::new();
+    let weight = if matters(reader, opening) {
+        Weight::Plain
+    } else {
+        Weight::Detail
+    };
     let sides = [(Side::Above, ONE_WAY), (Side::Below, -ONE_WAY)];
     for ((side, threshold), way) in sides.into_iter().zip(words(reader, opening)) {
         for spell in reader.by_stage(history, side, threshold) {
             let text = format!("{name}: flow turns one-way, all of it {way}");
-            out.push(state(reader, spell.start, Kind::OneWay, index, text).with_spell(spell));
+            out.push(
+                state(reader, spell.start, Kind::OneWay, index, text)
+                    .with_spell(spell)
+                    .weighing(weight),
+            );
             let end = spell.end.filter(|end| {
                 // Ending because little flows any more is no turn.
                 let later = reader.history(subject, Quantity::FlowForward).at(end + 1.0)
@@ -124,6 +141,21 @@ fn turns(reader: &Reader<'_>, index: usize, opening: &Opening) -> Vec<Moment> {
         }
     }
     out
+}
+
+/// Whether an opening is one of the building's ends, of the fire's room or of
+/// people's.
+fn matters(reader: &Reader<'_>, opening: &Opening) -> bool {
+    let plan = reader.plan;
+    [opening.from, opening.to]
+        .into_iter()
+        .any(|side| match side {
+            Space::OpenAir => true,
+            Space::Room(room) => {
+                plan.items.iter().any(|item| item.room == room)
+                    || plan.stations.iter().any(|station| station.room == room)
+            }
+        })
 }
 
 /// A moment of an opening with flows and temperatures.
@@ -179,10 +211,11 @@ fn flames(reader: &Reader<'_>, index: usize, opening: &Opening) -> Vec<Moment> {
 /// Rooms that momentum mixes.
 fn mixed(reader: &Reader<'_>, room: usize) -> Vec<Moment> {
     let subject = Subject::Room(room);
-    let share = reader.history(subject, Quantity::MixedShare);
+    let share = mixed_share(reader, room);
+    let history = History::new(&reader.record.time, &share);
     let name = reader.room_name(room);
     reader
-        .by_stage(share, Side::Above, MIXED)
+        .by_stage(history, Side::Above, MIXED)
         .into_iter()
         .map(|spell| {
             let mean = reader.history(subject, Quantity::MeanTemperature);
@@ -202,8 +235,19 @@ fn mixed(reader: &Reader<'_>, room: usize) -> Vec<Moment> {
 
 /// When momentum mixes a room.
 pub(super) fn mixed_stretches(reader: &Reader<'_>, room: usize) -> Vec<Stretch> {
-    let share = reader.history(Subject::Room(room), Quantity::MixedShare);
-    stretches(share.spells(Side::Above, MIXED))
+    let share = mixed_share(reader, room);
+    stretches(History::new(&reader.record.time, &share).spells(Side::Above, MIXED))
+}
+
+/// How far momentum mixes a room, zero while it is cold.
+fn mixed_share(reader: &Reader<'_>, room: usize) -> Vec<f64> {
+    let of = |quantity| reader.record.get(Subject::Room(room), quantity);
+    let start = reader.plan.rooms.get(room).map_or(0.0, |r| r.temperature);
+    of(Quantity::MixedShare)
+        .iter()
+        .zip(of(Quantity::MeanTemperature))
+        .map(|(share, mean)| if *mean > start + WARM { *share } else { 0.0 })
+        .collect()
 }
 
 fn stretches(spells: Vec<Spell>) -> Vec<Stretch> {
@@ -227,7 +271,9 @@ pub(super) fn summary(reader: &Reader<'_>) -> Vec<FlowSummary> {
             };
             let forward = strongest(Quantity::FlowForward)?;
             let backward = strongest(Quantity::FlowBackward)?;
-            if forward.value.max(backward.value) < SMALLEST_FLOW {
+            let open = reader.history(subject, Quantity::ClearWidth);
+            let (_, widest) = open.largest(0.0, reader.end)?;
+            if forward.value.max(backward.value) < SMALLEST_FLOW || widest < AJAR {
                 return None;
             }
             let excess = excess(reader, index);

@@ -70,7 +70,8 @@ impl Resolver<'_> {
             );
             return None;
         };
-        let level = self.level(&whole, at + 1..text.len(), right, *dimension);
+        let blank = right.len() - right.trim_start().len();
+        let level = self.level(&whole, at + 1 + blank..text.len(), right, *dimension);
         let room = left.trim_end().strip_suffix(word).unwrap_or_default();
         let watched = self.watched(&whole, word, room, rooms);
         let condition = Condition {
