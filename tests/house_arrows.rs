@@ -15,7 +15,8 @@ const ARROWS: &[(&str, &[&str])] = &[
     ("physics", &[]),
     ("record", &[]),
     ("catalogue", &["units", "plan"]),
-    ("scenario", &["units", "catalogue", "plan"]),
+    // Wind pressures and air-tightness figures become numbers of the plan.
+    ("scenario", &["units", "catalogue", "plan", "physics"]),
     ("solve", &["plan", "physics", "record"]),
     ("reading", &["plan", "physics", "record"]),
     ("exposure", &["plan", "physics", "record"]),

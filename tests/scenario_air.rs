@@ -263,3 +263,26 @@ fn formula_leakage_of_an_air_tightness_figure() {
     assert!((leak.gap_area - 0.063).abs() < 0.001, "{}", leak.gap_area);
     assert_eq!(leak.gap_coefficient, 0.6);
 }
+
+/// The catalogue and the formulas of glass and doors say the same.
+#[test]
+fn formula_glass_and_doors_as_in_physics() {
+    use doorglow::catalogue::catalogue;
+    use doorglow::physics::glass;
+    for (name, of) in [
+        ("single thin", glass::SINGLE_THIN),
+        ("single thick", glass::SINGLE_THICK),
+        ("double", glass::DOUBLE),
+    ] {
+        let row = catalogue().glass(name).unwrap();
+        assert_eq!(row.layer, of.gas_temperature, "{name}");
+        assert_eq!(row.pane.thickness, of.thickness);
+        assert_eq!(row.pane.density, glass::DENSITY);
+        assert_eq!(row.pane.heat_capacity, glass::HEAT_CAPACITY);
+        assert_eq!(row.pane.emissivity, glass::EMISSIVITY);
+        assert!(row.rise > of.crack_rise);
+    }
+    let hollow = catalogue().leaf("hollow").unwrap();
+    assert_eq!(hollow.layer, glass::HOLLOW_DOOR_TEMPERATURE);
+    assert_eq!(hollow.delay, glass::HOLLOW_DOOR_DELAY);
+}

@@ -22,7 +22,8 @@ fn run(plan: &Plan, every: f64) -> Record {
             .columns
             .iter()
             .filter(|c| c.quantity != Quantity::NeutralPlane
-                && c.quantity != Quantity::TemperatureForward)
+                && c.quantity != Quantity::TemperatureForward
+                && c.quantity != Quantity::PaneTemperature)
             .all(|c| c.values.iter().all(|v| !v.is_nan())),
         "not-a-number in the record"
     );

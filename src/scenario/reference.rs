@@ -153,8 +153,13 @@ pub(super) fn example(field: &Field) -> String {
 /// A text of the field table as a TOML value.
 pub(super) fn toml_example(kind: Kind, text: &str) -> String {
     let bare = match kind {
-        Kind::Flag | Kind::Two(_) | Kind::Courses | Kind::Names(..) | Kind::Starts => true,
-        Kind::Inner(_) | Kind::GivesWay(_) => true,
+        Kind::Flag
+        | Kind::Two(_)
+        | Kind::Courses
+        | Kind::Names(..)
+        | Kind::Starts
+        | Kind::Inner(_)
+        | Kind::GivesWay(_) => true,
         Kind::Quantity(Dimension::Ratio, ..) => text.parse::<f64>().is_ok(),
         _ => false,
     };

@@ -35,18 +35,16 @@ impl Resolver<'_> {
             }
             (None, Some(width), Some(length)) if kind == OpeningKind::Hatch => width * length,
             _ => {
-                if !values.has("area") && kind == OpeningKind::Stair {
-                    self.note(wanted(
-                        values,
-                        "area",
-                        "a stair has an opening in the floor",
-                    ));
-                } else if !values.has("area") && !(values.has("width") && values.has("length")) {
-                    self.note(wanted(
-                        values,
-                        "area",
-                        "a hatch has an area, or width and length",
-                    ));
+                let both = values.has("width") && values.has("length");
+                let because = match kind {
+                    OpeningKind::Stair => Some("a stair has an opening in the floor"),
+                    _ if both => None,
+                    _ => Some("a hatch has an area, or width and length"),
+                };
+                if let Some(because) = because
+                    && !values.has("area")
+                {
+                    self.note(wanted(values, "area", because));
                 }
                 UNREAD
             }
