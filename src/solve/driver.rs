@@ -10,9 +10,6 @@ use super::integrator::Equations;
 /// jumps there is seen from inside.
 const INSIDE: f64 = 1e-9;
 
-/// Rate of a difference (Pa/s) so slow that it is as good as quasi-steady.
-const SLOW: f64 = 20.0;
-
 /// The model with what the run needs to know about it.
 pub struct Driver<'a, 'w> {
     /// The model.
@@ -56,20 +53,29 @@ impl<'a, 'w> Driver<'a, 'w> {
         self.model.evaluate(time.clamp(start, end), y, dy)
     }
 
-    /// Pressure difference across an opening by the given room pressures, and
-    /// its rate as far as it is dynamic, when there is a way through.
-    fn difference(&self, opening: usize, pressure: impl Fn(usize) -> f64) -> Option<(f64, f64)> {
+    /// Pressure difference across an opening by the given room pressures, when
+    /// there is a way through.
+    fn difference(&self, opening: usize, pressure: impl Fn(usize) -> f64) -> Option<f64> {
         let passage = &self.model.balance.passages[opening];
-        let rate = |room| {
-            let group = self.model.group_of(room);
-            group.map_or(0.0, |g| self.model.balance.group_rate(g))
-        };
-        let [first, second] = passage.rooms().map(|room| {
-            let pressure = room.map_or(0.0, &pressure);
-            (pressure, room.map_or(0.0, rate))
-        });
-        let way = passage.stand.coefficient_width > 0.0;
-        way.then_some((first.0 - second.0, first.1 - second.1))
+        let [first, second] = passage
+            .rooms()
+            .map(|room| room.map_or(0.0, |r| pressure(r)));
+        (passage.stand.coefficient_width > 0.0).then_some(first - second)
+    }
+
+    /// Difference towards which a dynamic one is on its way, Pa: a way out evens
+    /// a group's pressure at a rate that goes with the root of the difference.
+    fn destination(&self, opening: usize, difference: f64) -> f64 {
+        let balance = &self.model.balance;
+        let (mut rate, mut evening) = (0.0, 0.0);
+        for (room, sign) in balance.passages[opening].rooms().into_iter().zip([1.0, -1.0]) {
+            if let Some(group) = room.and_then(|r| self.model.group_of(r)) {
+                rate += sign * balance.group_rate(group);
+                evening += balance.evening(group);
+            }
+        }
+        let root = difference.abs().sqrt().copysign(difference) + rate / evening.max(1e-9);
+        root * root
     }
 
     /// True when both sides of an opening share one mean pressure, that of a
@@ -87,7 +93,7 @@ impl<'a, 'w> Driver<'a, 'w> {
             && self.quasi_steady(opening)
             && self
                 .difference(opening, pressure)
-                .is_some_and(|(p, _)| p.is_nan() || p.abs() > OVERPRESSURE)
+                .is_some_and(|p| p.is_nan() || p.abs() > OVERPRESSURE)
     }
 
     /// True when the difference across a cut opening is small again and will
@@ -97,7 +103,7 @@ impl<'a, 'w> Driver<'a, 'w> {
         self.cut[opening]
             && self
                 .difference(opening, pressure)
-                .is_none_or(|(p, rate)| p.abs() < RELEASE && (p * rate < 0.0 || rate.abs() < SLOW))
+                .is_none_or(|p| p.abs() < RELEASE && self.destination(opening, p) < 2.0 * RELEASE)
     }
 
     /// After the last evaluation: cuts openings across which the quasi-steady

@@ -177,6 +177,8 @@ pub struct Balance {
     rooms: usize,
     /// Tight group of each room.
     group_of: Vec<Option<usize>>,
+    /// Evening-out of the groups' pressures, see [`Balance::evening`].
+    evening: Vec<f64>,
     fixed: Vec<f64>,
     stiffness: Vec<f64>,
     internal: Vec<[f64; 2]>,
@@ -219,6 +221,7 @@ impl Balance {
             solution: vec![0.0; 2 * n],
             rooms: n,
             group_of: vec![None; n],
+            evening: vec![0.0; n],
             fixed: vec![0.0; n],
             stiffness: vec![0.0; n],
             internal: vec![[0.0; 2]; n],
@@ -240,6 +243,12 @@ impl Balance {
     /// Rate of the mean pressure of a tight group, Pa/s.
     pub fn group_rate(&self, group: usize) -> f64 {
         self.solution[self.rooms + group]
+    }
+
+    /// Rate at which a tight group's pressure evens out through all its ways, over
+    /// the root of the difference, Pa^(1/2)/s.
+    pub fn evening(&self, group: usize) -> f64 {
+        self.evening[group]
     }
 
     /// Gauge pressure of a room (Pa) that the last search for a balance tried
@@ -366,7 +375,8 @@ impl Balance {
                 .map(|(passage, o)| passage.stand.coefficient_width * (o.head - o.sill))
                 .sum();
             let stiffness: f64 = group.rooms.iter().map(|r| self.stiffness[*r]).sum();
-            let root = area * speed / (stiffness * EVENING_RATE);
+            self.evening[g] = area * speed / stiffness;
+            let root = self.evening[g] / EVENING_RATE;
             let wide = (root * root).min(WIDEST_REGULARISATION);
             for n in 0..self.passages.len() {
                 if leads_out(&self.passages[n]) {
