@@ -25,6 +25,13 @@ const FLOOR: f64 = 2.8e-3;
 /// flows that no search can settle.
 const NOISE: f64 = 8.0 * f64::EPSILON;
 
+/// Share of the promised fall of the residual that a step must bring.
+const SUFFICIENT: f64 = 0.1;
+
+/// Exponent with which entrainment by a jet goes with its flow at one
+/// temperature: 1/3 far from its opening, 0.6 near it.
+const JET_EXPONENT: f64 = 0.45;
+
 /// Most iterations before the state is given up.
 const MOST_ITERATIONS: usize = 60;
 
@@ -52,6 +59,8 @@ pub struct Stream {
     pub dragged: f64,
     /// Highest pressure difference that drives it, Pa.
     pub peak_difference: f64,
+    /// Change of what is lifted and dragged with the flow that does it.
+    slopes: [f64; 2],
 }
 
 impl Stream {
@@ -315,7 +324,10 @@ impl Balance {
                 self.trial[i] = self.solution[i] + factor * self.step[i];
             }
             norm = self.evaluate(problem);
-            if norm <= 1.0 || largest(&self.residual[..unknowns], &self.held) < before {
+            let merit = largest(&self.residual[..unknowns], &self.held);
+            // Armijo's condition: a full step across the root's zero lands as far
+            // on the other side and would go to and fro for ever.
+            if norm <= 1.0 || merit < (1.0 - SUFFICIENT * factor) * before {
                 break;
             }
             factor *= 0.5;
@@ -610,23 +622,35 @@ impl Passage {
                 residual[room] += stream.lifted * up + stream.dragged * down;
             }
         }
-        self.add_slopes(layers, matrix, unknowns);
+        self.add_slopes(layers, internal, matrix, unknowns);
     }
 
-    fn add_slopes(&self, layers: &Layers, matrix: &mut [f64], unknowns: usize) {
+    fn add_slopes(
+        &self,
+        layers: &Layers,
+        internal: &[[f64; 2]],
+        matrix: &mut [f64],
+        unknowns: usize,
+    ) {
         for (band, part) in self.bands.as_slice().iter().zip(&self.parts) {
             let direction = usize::from(!band.forward);
             let source = self.source(direction);
             // Change of the volume balances with the pressure of the first side.
             let slope = if band.forward { band.slope } else { -band.slope };
+            let (from, to) = (self.rooms[direction], self.rooms[1 - direction]);
+            let [lifts, drags] = self.streams[direction].slopes;
+            let [up, down] = to.map_or([0.0; 2], |room| internal[room]);
+            let jet = 1.0 - self.stand.leak_share;
             let (mut out, mut gain) = (0.0, 0.0);
             for k in 0..2 {
+                let drawn = slope * part.drawn[k];
                 let growth = self.growth[direction][k];
                 let raised = part.raised[k];
-                out -= slope * part.drawn[k] / layers.layers[source[k]].density;
-                gain += slope * part.drawn[k] * (growth[0] * (1.0 - raised) + growth[1] * raised);
+                let deposit = jet * self.deposit[direction][k];
+                out -= drawn / layers.layers[source[k]].density;
+                gain += drawn * (growth[0] * (1.0 - raised) + growth[1] * raised);
+                gain += drawn * (deposit * lifts * up + (jet - deposit) * drags * down);
             }
-            let (from, to) = (self.rooms[direction], self.rooms[1 - direction]);
             for (row, change) in [(from, out), (to, gain)] {
                 let Some(row) = row else { continue };
                 if let Some(first) = self.rooms[0] {
