@@ -11,8 +11,8 @@ use crate::physics::plume::Law;
 use crate::physics::view_factor::parallel_rectangles;
 use crate::physics::{conduction, humidity};
 use crate::plan::{
-    Burning, Choices, Curve, Fuel, Item, Lining, PlacementRule, Plan, PlumeModel, Room, RoomId,
-    Space,
+    Burning, Choices, Curve, Fuel, Item, Lining, Opening, PlacementRule, Plan, PlumeModel, Room,
+    RoomId, Space,
 };
 use thiserror::Error;
 
@@ -74,7 +74,7 @@ pub enum Face {
 pub struct Slab {
     /// Conduction grid.
     pub grid: Grid,
-    /// Area, m2.
+    /// Area without shut leaves, m2.
     pub area: f64,
     /// Emissivity of both faces.
     pub emissivity: f64,
@@ -82,6 +82,18 @@ pub struct Slab {
     pub faces: [Face; 2],
     /// Temperature at ignition, K.
     pub start: f64,
+}
+
+/// The part of a shut opening that counts as lining of a wall strip: its leaf
+/// or glass warms with the wall and leaves the room when it opens.
+#[derive(Debug, Clone, Copy)]
+pub struct Leaf {
+    /// Strip of wall.
+    pub slab: usize,
+    /// Opening.
+    pub opening: usize,
+    /// Area in this strip, m2.
+    pub area: f64,
 }
 
 /// A face of a slab as a room sees it.
@@ -118,9 +130,6 @@ pub struct Hull {
     pub air_mass: f64,
     /// Temperature at ignition, K.
     pub start: f64,
-    /// Share of the wall area that is lined, the rest being openings and
-    /// shared walls, 0.05..1.
-    pub lined_share: f64,
 }
 
 /// An item with what was worked out about it.
@@ -165,6 +174,8 @@ pub struct Building {
     pub rooms: Vec<Hull>,
     /// Slabs.
     pub slabs: Vec<Slab>,
+    /// Leaves of the openings.
+    pub leaves: Vec<Leaf>,
     /// Items.
     pub items: Vec<Source>,
     /// Layout of the state.
@@ -197,11 +208,12 @@ impl Building {
             .map(reaction)
             .collect::<Result<Vec<_>, _>>()?;
         let (oxygen_share, carbon_share) = atom_shares(plan);
-        let mut rooms: Vec<Hull> = plan.rooms.iter().map(|r| space(r, plan)).collect();
+        let mut rooms: Vec<Hull> = plan.rooms.iter().map(space).collect();
         for room in &mut rooms {
             room.air_mass = room.volume * air_density;
         }
         let slabs = slabs(plan, &mut rooms)?;
+        let leaves = leaves(plan, &slabs);
         let nodes: Vec<usize> = slabs.iter().map(|s| s.grid.capacity.len()).collect();
         let layout = Layout::new(rooms.len(), gas.len(), plan.items.len(), &nodes);
         let items = plan.items.iter().map(|i| source(i, plan)).collect();
@@ -223,9 +235,20 @@ impl Building {
             carbon_share,
             rooms,
             slabs,
+            leaves,
             items,
             layout,
         })
+    }
+
+    /// Heat stored in a slab above its start, J/m2.
+    pub fn stored(&self, slab: usize, y: &[f64]) -> f64 {
+        let start = self.slabs[slab].start;
+        y[self.layout.slab(slab)]
+            .iter()
+            .zip(&self.slabs[slab].grid.capacity)
+            .map(|(t, c)| c * (t - start))
+            .sum()
     }
 
     /// State at ignition.
@@ -366,25 +389,7 @@ fn atom_shares(plan: &Plan) -> (Vec<f64>, Vec<f64>) {
     (oxygen, carbon)
 }
 
-fn space(room: &Room, plan: &Plan) -> Hull {
-    let id = plan.rooms.iter().position(|r| std::ptr::eq(r, room));
-    let gross = room.perimeter() * room.height;
-    let openings: f64 = plan
-        .openings
-        .iter()
-        .filter(|o| {
-            [o.from, o.to]
-                .iter()
-                .any(|s| matches!(s, Space::Room(RoomId(r)) if Some(*r) == id))
-        })
-        .map(|o| o.width * (o.head - o.sill))
-        .sum();
-    let shared: f64 = plan
-        .shared_walls
-        .iter()
-        .filter(|w| w.between.iter().any(|r| Some(r.0) == id))
-        .map(|w| w.length * room.height)
-        .sum();
+fn space(room: &Room) -> Hull {
     Hull {
         volume: room.volume(),
         area: room.floor_area(),
@@ -396,7 +401,6 @@ fn space(room: &Room, plan: &Plan) -> Hull {
         faces: Vec::new(),
         air_mass: 0.0,
         start: room.temperature,
-        lined_share: ((gross - openings - shared) / gross).clamp(0.05, 1.0),
     }
 }
 
@@ -421,7 +425,6 @@ fn slabs(plan: &Plan, rooms: &mut [Hull]) -> Result<Vec<Slab>, PlanFault> {
     let mut slabs = Vec::new();
     for (r, room) in plan.rooms.iter().enumerate() {
         let strip = room.height / WALL_STRIPS as f64;
-        let strip_area = room.perimeter() * strip * rooms[r].lined_share;
         let mut parts = vec![
             (&room.ceiling, Face::Ceiling(r), room.floor_area()),
             (&room.floor, Face::Floor(r), room.floor_area()),
@@ -432,7 +435,8 @@ fn slabs(plan: &Plan, rooms: &mut [Hull]) -> Result<Vec<Slab>, PlanFault> {
                 bottom: n as f64 * strip,
                 top: (n + 1) as f64 * strip,
             };
-            parts.push((&room.walls, face, strip_area));
+            let area = strip_area(plan, r, n as f64 * strip, (n + 1) as f64 * strip);
+            parts.push((&room.walls, face, area));
         }
         for (lining, face, area) in parts {
             slabs.push(Slab {
@@ -476,6 +480,69 @@ fn slabs(plan: &Plan, rooms: &mut [Hull]) -> Result<Vec<Slab>, PlanFault> {
         }
     }
     Ok(slabs)
+}
+
+/// Smallest share of a strip of wall that stays lined.
+const LEAST_LINED: f64 = 0.05;
+
+/// Area of a strip of a room's wall between two heights, without openings and
+/// shared walls, m2.
+fn strip_area(plan: &Plan, room: usize, bottom: f64, top: f64) -> f64 {
+    let gross = plan.rooms[room].perimeter() * (top - bottom);
+    let openings: f64 = plan
+        .openings
+        .iter()
+        .filter(|o| leads_to(o, room))
+        .map(|o| overlap(plan, o, room, bottom, top))
+        .sum();
+    let shared: f64 = plan
+        .shared_walls
+        .iter()
+        .filter(|w| w.between.contains(&RoomId(room)))
+        .map(|w| w.length * (top - bottom))
+        .sum();
+    (gross - openings - shared).max(LEAST_LINED * gross)
+}
+
+fn leads_to(opening: &Opening, room: usize) -> bool {
+    [opening.from, opening.to].contains(&Space::Room(RoomId(room)))
+}
+
+/// Area of an opening in a strip of a room's wall, m2.
+fn overlap(plan: &Plan, opening: &Opening, room: usize, bottom: f64, top: f64) -> f64 {
+    // Heights of an opening are given above the floor of its first room.
+    let shift = match (opening.from, opening.to) {
+        (Space::Room(first), _) | (Space::OpenAir, Space::Room(first)) => {
+            plan.rooms[first.0].floor_level - plan.rooms[room].floor_level
+        }
+        _ => 0.0,
+    };
+    let height = (opening.head + shift).min(top) - (opening.sill + shift).max(bottom);
+    opening.width * height.max(0.0)
+}
+
+fn leaves(plan: &Plan, slabs: &[Slab]) -> Vec<Leaf> {
+    let mut leaves = Vec::new();
+    for (s, slab) in slabs.iter().enumerate() {
+        let [Face::Wall { room, bottom, top }, Face::Behind(_)] = slab.faces else {
+            continue;
+        };
+        for (o, opening) in plan.openings.iter().enumerate() {
+            let area = if leads_to(opening, room) {
+                overlap(plan, opening, room, bottom, top)
+            } else {
+                0.0
+            };
+            if area > 0.0 {
+                leaves.push(Leaf {
+                    slab: s,
+                    opening: o,
+                    area,
+                });
+            }
+        }
+    }
+    leaves
 }
 
 /// Mirror numbers of the weak placement rule: at a wall, in a corner. By the

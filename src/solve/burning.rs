@@ -230,7 +230,12 @@ fn free(item: &Item, plan: &Plan, building: &Building, index: usize, time: f64, 
         Burning::Growing(curve) => {
             let clock = y[building.layout.item(index, ItemPlace::Progress)];
             let mass = y[building.layout.item(index, ItemPlace::Mass)].max(0.0);
-            free_release(curve, clock) * burn_out(mass, source.mass, plan.choices.burnout_share)
+            // Over its value at the full load, so that the curve given comes
+            // back while there is plenty of fuel.
+            let share = plan.choices.burnout_share;
+            let left =
+                burn_out(mass, source.mass, share) / burn_out(source.mass, source.mass, share);
+            free_release(curve, clock) * left
         }
         Burning::AsGiven(curve) => free_release(curve, time - item.ignition),
         Burning::Burner { rate, ramp, .. } => {
@@ -260,8 +265,10 @@ fn release(
         let beside = flamed / (flamed + NEIGHBOUR_FLAME);
         (
             free * (f.flaming + f.gasified * beside),
-            free * f.glowing,
-            free * (f.flaming + f.gasified + f.glowing),
+            // A curve measured in the open has its embers in it: they add only
+            // where there is no flame.
+            free * (1.0 - flamed) * f.glowing,
+            free * (f.flaming + f.gasified + (1.0 - flamed) * f.glowing),
         )
     } else {
         (free * flamed, 0.0, free)

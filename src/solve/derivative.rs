@@ -61,6 +61,8 @@ pub struct Model<'a> {
     pub in_jets: Vec<f64>,
     /// Heat that fuel going to the open air could release, W per opening.
     pub outside: Vec<f64>,
+    /// Areas of the slabs with their shut leaves, m2.
+    pub areas: Vec<f64>,
     /// Evaluations that touched a guard.
     pub guards: u64,
     /// The last refusal.
@@ -94,6 +96,7 @@ impl<'a> Model<'a> {
             guards: 0,
             refusal: None,
             changes: Changes::new(building),
+            areas: building.slabs.iter().map(|s| s.area).collect(),
             fluxes: vec![[0.0; 2]; building.slabs.len()],
             neighbours: vec![0.0; n],
             extra: vec![Vector4::zeros(); n],
@@ -116,6 +119,7 @@ impl<'a> Model<'a> {
             openings: &self.plan.openings,
             choices: &self.plan.choices,
             layers: &self.layers,
+            areas: &self.areas,
             y,
         }
     }
@@ -141,6 +145,7 @@ impl<'a> Model<'a> {
             let width = self.schedule.clear_width(opening, o, time);
             self.balance.passages[o].stand = stand(opening, width);
         }
+        self.set_leaves();
         self.changes.clear();
         self.burn_items(time, y);
         self.exchange_heat(y, dy);
@@ -160,8 +165,34 @@ impl<'a> Model<'a> {
         self.move_gas();
         self.burn_in_jets(y, dy);
         self.fill(dy);
-        self.keep_ledger(dy);
+        self.keep_ledger(time, y, dy);
         Ok(())
+    }
+
+    /// Areas of the slabs with the leaves that are shut.
+    fn set_leaves(&mut self) {
+        for (area, slab) in self.areas.iter_mut().zip(&self.building.slabs) {
+            *area = slab.area;
+        }
+        for leaf in &self.building.leaves {
+            let opening = &self.plan.openings[leaf.opening];
+            let open = self.balance.passages[leaf.opening].stand.clear_width / opening.width;
+            self.areas[leaf.slab] += leaf.area * (1.0 - open).clamp(0.0, 1.0);
+        }
+    }
+
+    /// Heat that leaves with opening leaves, W; negative when they bring it
+    /// back.
+    fn heat_of_leaves(&self, time: f64, y: &[f64]) -> f64 {
+        let mut lost = 0.0;
+        for leaf in &self.building.leaves {
+            let opening = &self.plan.openings[leaf.opening];
+            let rate = self.schedule.widening(leaf.opening, time) / opening.width;
+            if rate != 0.0 {
+                lost += leaf.area * rate * self.building.stored(leaf.slab, y);
+            }
+        }
+        lost
     }
 
     fn read_pressures(&mut self, y: &[f64]) {
@@ -207,6 +238,7 @@ impl<'a> Model<'a> {
             openings: &self.plan.openings,
             choices: &self.plan.choices,
             layers: &self.layers,
+            areas: &self.areas,
             y,
         };
         let passages = &self.balance.passages;
@@ -458,7 +490,7 @@ impl<'a> Model<'a> {
             .sum()
     }
 
-    fn keep_ledger(&self, dy: &mut [f64]) {
+    fn keep_ledger(&self, time: f64, y: &[f64], dy: &mut [f64]) {
         let layout = &self.building.layout;
         let outside = self.layers.outside();
         let air = self.layers.layers[outside];
@@ -497,7 +529,8 @@ impl<'a> Model<'a> {
             self.changes.enthalpy(outside)
                 + inflow * air.enthalpy
                 + self.losses.radiation
-                + self.losses.backs,
+                + self.losses.backs
+                + self.heat_of_leaves(time, y),
         );
     }
 }

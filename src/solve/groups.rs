@@ -81,19 +81,13 @@ fn leads_out(opening: &Opening, rooms: &[usize]) -> bool {
 
 /// Energy of gas (above 298.15 K, less pressure times volume) and linings
 /// (above their start), J.
-pub fn energy(building: &Building, layers: &Layers, y: &[f64]) -> f64 {
+fn energy(building: &Building, layers: &Layers, areas: &[f64], y: &[f64]) -> f64 {
     let mut total = 0.0;
     for (k, layer) in layers.layers[..layers.outside()].iter().enumerate() {
         total += layer.mass * layer.enthalpy - layers.pressure[k / 2] * layer.volume;
     }
-    for (s, slab) in building.slabs.iter().enumerate() {
-        let nodes = &y[building.layout.slab(s)];
-        total += slab.area
-            * nodes
-                .iter()
-                .zip(&slab.grid.capacity)
-                .map(|(t, c)| c * (t - slab.start))
-                .sum::<f64>();
+    for (s, area) in areas.iter().enumerate() {
+        total += area * building.stored(s, y);
     }
     total
 }
@@ -104,6 +98,7 @@ pub fn energy(building: &Building, layers: &Layers, y: &[f64]) -> f64 {
 pub fn settle(
     building: &Building,
     layers: &mut Layers,
+    areas: &[f64],
     y: &mut [f64],
     old: &[TightGroup],
     new: &[TightGroup],
@@ -125,9 +120,9 @@ pub fn settle(
         group.rooms.iter().for_each(|r| after[*r] = sum / volume);
     }
     if before.iter().zip(&after).any(|(b, a)| (b - a).abs() > 1e-9) {
-        let start = content(building, layers, y, &before);
+        let start = content(building, layers, areas, y, &before);
         even_out(building, y, &before, &after, new);
-        let end = content(building, layers, y, &after);
+        let end = content(building, layers, areas, y, &after);
         book(layout, y, &start, &end);
     }
     for r in 0..n {
@@ -142,6 +137,7 @@ pub fn settle(
 pub fn content(
     building: &Building,
     layers: &mut Layers,
+    areas: &[f64],
     y: &[f64],
     mean_pressure: &[f64],
 ) -> [f64; 4] {
@@ -155,7 +151,7 @@ pub fn content(
         }
     }
     layers.read(building, y, mean_pressure);
-    sums[3] = energy(building, layers, y);
+    sums[3] = energy(building, layers, areas, y);
     sums
 }
 

@@ -95,6 +95,8 @@ pub struct Scene<'a> {
     pub choices: &'a Choices,
     /// Layers.
     pub layers: &'a Layers,
+    /// Areas of the slabs with their shut leaves, m2.
+    pub areas: &'a [f64],
     /// The state.
     pub y: &'a [f64],
 }
@@ -199,8 +201,9 @@ impl Scene<'_> {
                 }
                 Face::Wall { bottom, top, .. } => {
                     let above = share_above(bottom, top, interface);
-                    walls[0].add(slab.area * above, emission, reflection);
-                    walls[1].add(slab.area * (1.0 - above), emission, reflection);
+                    let area = self.areas[f.slab];
+                    walls[0].add(area * above, emission, reflection);
+                    walls[1].add(area * (1.0 - above), emission, reflection);
                 }
                 Face::Behind(_) => {}
             }
@@ -312,6 +315,7 @@ impl Scene<'_> {
         let mut upper_wall = [0.0; 3];
         for f in &hull.faces {
             let slab = &self.building.slabs[f.slab];
+            let area = self.areas[f.slab];
             let surface = self.surface(f.slab, f.back);
             let above = match f.face {
                 Face::Ceiling(_) => 1.0,
@@ -322,16 +326,16 @@ impl Scene<'_> {
                 (1.0 - above) * h[LOWER] * (temperature[LOWER] - surface),
                 above * h[UPPER] * (temperature[UPPER] - surface),
             ];
-            convected[LOWER] += slab.area * parts[LOWER];
-            convected[UPPER] += slab.area * parts[UPPER];
+            convected[LOWER] += area * parts[LOWER];
+            convected[UPPER] += area * parts[UPPER];
             let own = black(surface);
             let radiant = slab.emissivity
                 * match f.face {
                     Face::Ceiling(_) => radiation.whole[CEILING] - own,
                     Face::Wall { .. } => {
-                        upper_wall[0] += slab.area * above;
-                        upper_wall[1] += slab.area * above * surface;
-                        upper_wall[2] += slab.area * parts[UPPER];
+                        upper_wall[0] += area * above;
+                        upper_wall[1] += area * above * surface;
+                        upper_wall[2] += area * parts[UPPER];
                         above * radiation.stretch[0] * (radiation.whole[UPPER_WALL] - own)
                             + (1.0 - above)
                                 * radiation.stretch[1]
@@ -339,7 +343,7 @@ impl Scene<'_> {
                     }
                     _ => radiation.whole[FLOOR] - own,
                 };
-            to_surfaces += slab.area * radiant;
+            to_surfaces += area * radiant;
             fluxes[f.slab][usize::from(f.back)] = parts[LOWER] + parts[UPPER] + radiant;
         }
         let outside = self.to_open_air(radiation, passages, room);
@@ -404,7 +408,7 @@ impl Scene<'_> {
             if let Face::Behind(temperature) = slab.faces[1] {
                 let flux = self.choices.convection_behind * (temperature - self.surface(s, true));
                 fluxes[s][1] = flux;
-                lost -= flux * slab.area;
+                lost -= flux * self.areas[s];
             }
             let at = self.building.layout.slab(s);
             conduction::rates(
@@ -429,7 +433,7 @@ impl Scene<'_> {
         let interface = self.layers.interface[room];
         let mut sums = [[0.0_f64; 2]; 4];
         for f in &self.building.rooms[room].faces {
-            let area = self.building.slabs[f.slab].area;
+            let area = self.areas[f.slab];
             let surface = self.surface(f.slab, f.back);
             let mut add = |which: usize, share: f64| {
                 sums[which][0] += area * share;

@@ -3,6 +3,8 @@
 //! used; its eighth-order sibling is first order on time-dependent systems.
 //!
 //! - Output is read off the continuous model, never its own dense output.
+//! - Its continuous model keeps the absolute values of its break points, so
+//!   times before zero are shifted; it panics when asked for not-a-number.
 //! - The stiffness check is off; fast pressures are algebraic in this house.
 //! - A refused evaluation gives slopes so steep that the step is rejected; the
 //!   accepted state is checked for being finite and a fault is latched.
@@ -63,6 +65,7 @@ pub enum Outcome {
 pub struct Solution {
     model: ContinuousOutputModel<f64, DVector<f64>>,
     scale: Vec<f64>,
+    shift: f64,
     /// Time reached, s.
     pub time: f64,
     /// State there, in its own units.
@@ -80,12 +83,31 @@ pub struct Solution {
 }
 
 impl Solution {
+    /// Nothing but the start.
+    fn none(scale: &[f64], stretch: &Stretch, state: &[f64]) -> Self {
+        Self {
+            model: ContinuousOutputModel::default(),
+            scale: scale.to_vec(),
+            shift: 0.0,
+            time: stretch.start,
+            state: state.to_vec(),
+            outcome: Outcome::Failed("it could not start".into()),
+            evaluations: 1,
+            steps: 0,
+            rejections: 0,
+            last_step: stretch.first_step,
+        }
+    }
+
     /// State at a time inside the stretch, off the interpolant of order 4.
     pub fn at(&self, time: f64) -> Option<Vec<f64>> {
+        if time.is_nan() {
+            return None;
+        }
         if time >= self.time {
             return (time <= self.time + 1e-9).then(|| self.state.clone());
         }
-        let scaled = self.model.evaluate(time)?;
+        let scaled = self.model.evaluate(time - self.shift)?;
         Some(scaled.iter().zip(&self.scale).map(|(y, s)| y * s).collect())
     }
 }
@@ -107,6 +129,7 @@ struct Inner<'a, E> {
 struct Adapter<'a, 'b, E> {
     inner: &'b RefCell<Inner<'a, E>>,
     scale: &'b [f64],
+    shift: f64,
 }
 
 impl<E: Equations> System<f64, DVector<f64>> for Adapter<'_, '_, E> {
@@ -117,7 +140,10 @@ impl<E: Equations> System<f64, DVector<f64>> for Adapter<'_, '_, E> {
             *y = x * s;
             finite &= y.is_finite();
         }
-        let taken = finite && inner.equations.rates(time, &inner.y, &mut inner.dy);
+        let taken = finite
+            && inner
+                .equations
+                .rates(time + self.shift, &inner.y, &mut inner.dy);
         inner.since_refusal = inner.since_refusal.saturating_add(1);
         if !taken || inner.dy.iter().any(|r| !r.is_finite()) {
             inner.since_refusal = 0;
@@ -138,6 +164,7 @@ impl<E: Equations> System<f64, DVector<f64>> for Adapter<'_, '_, E> {
         for ((y, x), s) in inner.y.iter_mut().zip(scaled.iter()).zip(self.scale) {
             *y = x * s;
         }
+        let time = time + self.shift;
         inner.last_step = time - inner.time;
         inner.before = inner.time;
         inner.time = time;
@@ -162,10 +189,18 @@ pub fn integrate<E: Equations>(
     stretch: &Stretch,
     state: &[f64],
 ) -> Solution {
+    // Refused slopes from the start on would all be alike and show no error.
+    let mut dy = vec![0.0; state.len()];
+    let taken = state.iter().all(|y| y.is_finite())
+        && equations.rates(stretch.start, state, &mut dy)
+        && dy.iter().all(|r| r.is_finite());
+    if !taken {
+        return Solution::none(scale, stretch, state);
+    }
     let inner = RefCell::new(Inner {
         equations,
         y: state.to_vec(),
-        dy: vec![0.0; state.len()],
+        dy,
         fault: None,
         stopped: false,
         refusals: 0,
@@ -176,14 +211,16 @@ pub fn integrate<E: Equations>(
     });
     let scaled = DVector::from_iterator(state.len(), state.iter().zip(scale).map(|(y, s)| y / s));
     let length = stretch.end - stretch.start;
+    let shift = stretch.start.min(0.0);
     let mut model = ContinuousOutputModel::default();
     let mut stepper = Dopri5::from_param(
         Adapter {
             inner: &inner,
             scale,
+            shift,
         },
-        stretch.start,
-        stretch.end,
+        stretch.start - shift,
+        stretch.end - shift,
         length,
         scaled,
         stretch.relative,
@@ -219,6 +256,7 @@ pub fn integrate<E: Equations>(
     Solution {
         model,
         scale: scale.to_vec(),
+        shift,
         time: match outcome {
             Outcome::Reached => stretch.end,
             _ if fault > 0 => inner.before,

@@ -54,7 +54,11 @@ mod tests {
         let entries: Vec<f64> = (0..n * n)
             .map(|i| {
                 let scattered = ((i * i * 31 + i * 17 + 5) % 97) as f64 - 48.0;
-                if i % (n + 1) == 0 { scattered + 150.0 } else { scattered }
+                if i % (n + 1) == 0 {
+                    scattered + 150.0
+                } else {
+                    scattered
+                }
             })
             .collect();
         let right: Vec<f64> = (0..n).map(|i| i as f64 - 1.5).collect();

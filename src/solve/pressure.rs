@@ -9,7 +9,9 @@ use super::layers::Layers;
 use super::layout::{LOWER, UPPER};
 use super::linear::solve_in_place;
 use super::schedule::Stand;
-use crate::physics::opening_flow::{Bands, GRAVITY, MOST_BANDS, REGULARISATION, Side, bands_regularised};
+use crate::physics::opening_flow::{
+    Bands, GRAVITY, MOST_BANDS, REGULARISATION, Side, bands_regularised,
+};
 use crate::physics::plume::buoyant_entrainment;
 use crate::physics::smooth::smoothstep;
 use crate::plan::{Choices, Opening, Space};
@@ -19,6 +21,11 @@ const TOLERANCE: f64 = 1e-9;
 
 /// Absolute floor of the balance: the volume rate of 1 kW of heat, m3/s.
 const FLOOR: f64 = 2.8e-3;
+
+/// Pressure that counts as none in the balance, Pa: hydrostatic pressures of
+/// some 100 Pa are known to about 1e-14 of themselves, which a wide opening
+/// turns into more flow than the floor.
+const PRESSURE_NOISE: f64 = 1e-13;
 
 /// Relative noise of a pressure difference against the pressures, some units
 /// in the last place: wide openings between rooms at some kPa turn it into
@@ -428,7 +435,8 @@ impl Balance {
         self.groups(problem, unknowns);
         for i in 0..unknowns {
             // What the last digits of the pressures make of the flows.
-            let noise = NOISE * (self.matrix[i * unknowns + i] * self.trial[i]).abs();
+            let known = NOISE * self.trial[i].abs() + PRESSURE_NOISE;
+            let noise = known * self.matrix[i * unknowns + i].abs();
             self.allowed[i] = TOLERANCE * self.scale[i] + noise;
         }
         largest(&self.residual[..unknowns], &self.allowed)
@@ -465,7 +473,10 @@ fn largest(residual: &[f64], allowed: &[f64]) -> f64 {
         .iter()
         .zip(allowed)
         .map(|(residual, allowed)| residual.abs() / allowed)
-        .fold(0.0, |a, b| if b.is_nan() { f64::INFINITY } else { a.max(b) })
+        .fold(
+            0.0,
+            |a, b| if b.is_nan() { f64::INFINITY } else { a.max(b) },
+        )
 }
 
 impl Passage {
@@ -541,7 +552,12 @@ impl Passage {
             let weight = layers[source[own]].available;
             part.drawn[own] = weight;
             part.drawn[1 - own] = 1.0 - weight;
-            for (k, flow) in part.drawn.map(|share| share * band.flow).into_iter().enumerate() {
+            for (k, flow) in part
+                .drawn
+                .map(|share| share * band.flow)
+                .into_iter()
+                .enumerate()
+            {
                 if !inside {
                     stream.flow[k][LOWER] += flow;
                     continue;
@@ -549,7 +565,9 @@ impl Passage {
                 let deposit = self.deposit[direction][k];
                 let jet = (1.0 - leak) * flow;
                 let up = jet * deposit;
-                part.raised[k] = (1.0 - leak) * deposit + leak * by_height;
+                // Gas from gaps goes in at its height, but hot gas rises.
+                let settled = 1.0 - (1.0 - by_height) * (1.0 - deposit);
+                part.raised[k] = (1.0 - leak) * deposit + leak * settled;
                 stream.flow[k][UPPER] += flow * part.raised[k];
                 stream.flow[k][LOWER] += flow * (1.0 - part.raised[k]);
                 let gas = &layers[source[k]];

@@ -32,7 +32,8 @@ pub fn run(
     let mut state = building.initial_state(plan);
     let at_start = {
         let zero = vec![0.0; building.rooms.len()];
-        content(&building, &mut driver.model.layers, &state, &zero)
+        let model = &mut driver.model;
+        content(&building, &mut model.layers, &model.areas, &state, &zero)
     };
     let mut out = Output {
         observer: Observer::new(),
@@ -43,7 +44,16 @@ pub fn run(
     };
     let ended = stretches(&mut driver, &mut state, &mut out);
     let pressures = mean_pressures(&driver.model, &state);
-    let at_end = content(&building, &mut driver.model.layers, &state, &pressures);
+    let at_end = {
+        let model = &mut driver.model;
+        content(
+            &building,
+            &mut model.layers,
+            &model.areas,
+            &state,
+            &pressures,
+        )
+    };
     out.work.evaluations = driver.evaluations;
     out.work.newton_iterations = driver.model.balance.iterations;
     out.work.guards = driver.model.guards;

@@ -75,6 +75,14 @@ impl Schedule {
         schedule
     }
 
+    /// Rate at which an opening widens at a time, m/s.
+    pub fn widening(&self, index: usize, time: f64) -> f64 {
+        match self.moves[index].iter().rev().find(|m| m.start <= time) {
+            Some(m) if time < m.end => (m.to - m.from) / (m.end - m.start),
+            _ => 0.0,
+        }
+    }
+
     /// Clear width of an opening at a time, m.
     pub fn clear_width(&self, opening: &Opening, index: usize, time: f64) -> f64 {
         let moves = &self.moves[index];

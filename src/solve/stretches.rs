@@ -98,7 +98,15 @@ fn begin(driver: &mut Driver<'_, '_>, state: &mut [f64], time: f64, landing: f64
         let schedule = driver.model.schedule;
         let (groups, end) = hold(plan, building, schedule, &driver.cut, time, landing);
         let old = std::mem::take(&mut driver.model.groups);
-        settle(building, &mut driver.model.layers, state, &old, &groups);
+        let model = &mut driver.model;
+        settle(
+            building,
+            &mut model.layers,
+            &model.areas,
+            state,
+            &old,
+            &groups,
+        );
         driver.model.groups = groups;
         driver.keep_within(time, end);
         let changed = match driver.evaluate(time, state, &mut rates) {
