@@ -6,6 +6,7 @@ use super::derivative::Refusal;
 use super::driver::Driver;
 use super::groups::{settle, tight};
 use super::integrator::{Outcome, Solution, Stretch, integrate};
+use super::layout::Account;
 use super::pressure::TightGroup;
 use super::run::Output;
 use super::schedule::{Landing, Schedule, Stand, stand};
@@ -20,6 +21,11 @@ const LONGEST_STEP: f64 = 10.0;
 
 /// Absolute tolerance of the scaled state as a share of the relative one.
 const ABSOLUTE_SHARE: f64 = 0.1;
+
+/// Time to either side of a landing within which what changes has jumped, s,
+/// and the least change of the open share of an opening that is one.
+const INSTANT: f64 = 1e-9;
+const JUMP: f64 = 1e-6;
 
 /// Share of a stretch to which a change of the tight groups is located.
 const RESOLUTION: f64 = 1e-6;
@@ -93,6 +99,8 @@ fn outcome(driver: &mut Driver<'_, '_>, solution: &Solution) -> (Option<Refusal>
 fn begin(driver: &mut Driver<'_, '_>, state: &mut [f64], time: f64, landing: f64) -> f64 {
     let (plan, building) = (driver.model.plan, driver.model.building);
     let mut rates = vec![0.0; state.len()];
+    let at = building.layout.account(Account::EnergyLost);
+    state[at] += heat_of_jumps(driver, time, state);
     // Every pass cuts at least one more opening.
     loop {
         let schedule = driver.model.schedule;
@@ -117,6 +125,25 @@ fn begin(driver: &mut Driver<'_, '_>, state: &mut [f64], time: f64, landing: f64
             return end;
         }
     }
+}
+
+/// Heat that leaves with leaves that open in no time at `time`, J; negative when
+/// they bring it back.
+fn heat_of_jumps(driver: &Driver<'_, '_>, time: f64, state: &[f64]) -> f64 {
+    let (plan, building) = (driver.model.plan, driver.model.building);
+    let mut lost = 0.0;
+    for leaf in &building.leaves {
+        let opening = &plan.openings[leaf.opening];
+        let schedule = driver.model.schedule;
+        let [before, after] = [time - INSTANT, time + INSTANT].map(|time| {
+            let width = schedule.clear_width(opening, leaf.opening, time);
+            (width / opening.width).clamp(0.0, 1.0)
+        });
+        if (after - before).abs() > JUMP {
+            lost += leaf.area * (after - before) * building.stored(leaf.slab, state);
+        }
+    }
+    lost
 }
 
 fn stands(plan: &Plan, schedule: &Schedule, time: f64) -> Vec<Stand> {
