@@ -10,6 +10,10 @@ use super::integrator::Equations;
 /// jumps there is seen from inside.
 const INSIDE: f64 = 1e-9;
 
+/// Time for which an opening stays cut, s, so that a room whose pressure
+/// swings is not cut and let go at every step.
+const HOLD: f64 = 1.0;
+
 /// The model with what the run needs to know about it.
 pub struct Driver<'a, 'w> {
     /// The model.
@@ -20,6 +24,10 @@ pub struct Driver<'a, 'w> {
     pub interrupted: bool,
     /// Openings taken for tight for the difference across them.
     pub cut: Vec<bool>,
+    /// When each of them was cut last, s.
+    since: Vec<f64>,
+    /// Time of the last evaluation, s.
+    time: f64,
     watch: &'w mut dyn FnMut(f64) -> bool,
     window: (f64, f64),
 }
@@ -33,6 +41,8 @@ impl<'a, 'w> Driver<'a, 'w> {
             evaluations: 0,
             interrupted: false,
             cut: vec![false; openings],
+            since: vec![0.0; openings],
+            time: 0.0,
             watch,
             window: (0.0, 0.0),
         }
@@ -50,6 +60,7 @@ impl<'a, 'w> Driver<'a, 'w> {
     /// As [`Model::evaluate`].
     pub fn evaluate(&mut self, time: f64, y: &[f64], dy: &mut [f64]) -> Result<(), Refusal> {
         let (start, end) = self.window;
+        self.time = time;
         self.model.evaluate(time.clamp(start, end), y, dy)
     }
 
@@ -101,9 +112,16 @@ impl<'a, 'w> Driver<'a, 'w> {
     fn relieved(&self, opening: usize) -> bool {
         let pressure = |room| self.model.balance.pressure(room);
         self.cut[opening]
+            && self.time - self.since[opening] > HOLD
             && self
                 .difference(opening, pressure)
                 .is_none_or(|p| p.abs() < RELEASE && self.destination(opening, p) < 2.0 * RELEASE)
+    }
+
+    /// True when by the last evaluation an opening is to be cut or let go.
+    pub fn calls_for_change(&self) -> bool {
+        let pressure = |room| self.model.balance.pressure(room);
+        (0..self.cut.len()).any(|o| self.relieved(o) || self.strained(o, pressure))
     }
 
     /// After the last evaluation: cuts openings across which the quasi-steady
@@ -142,8 +160,11 @@ impl<'a, 'w> Driver<'a, 'w> {
     }
 
     fn cut_also(&mut self, also: &[bool]) -> bool {
-        for (cut, also) in self.cut.iter_mut().zip(also) {
-            *cut |= also;
+        for (n, also) in also.iter().enumerate() {
+            if *also {
+                self.cut[n] = true;
+                self.since[n] = self.time;
+            }
         }
         also.iter().any(|also| *also)
     }
@@ -157,9 +178,6 @@ impl Equations for Driver<'_, '_> {
 
     fn accepted(&mut self, time: f64, _y: &[f64]) -> bool {
         self.interrupted = (self.watch)(time);
-        self.interrupted
-            || (0..self.cut.len()).any(|o| {
-                self.relieved(o) || self.strained(o, |room| self.model.balance.pressure(room))
-            })
+        self.interrupted || self.calls_for_change()
     }
 }

@@ -78,6 +78,8 @@ pub struct Solution {
     pub steps: u64,
     /// Rejected steps.
     pub rejections: u64,
+    /// Start of the last step, s.
+    pub before: f64,
     /// Mean accepted step, s, as a start for the next stretch.
     pub last_step: f64,
 }
@@ -95,6 +97,7 @@ impl Solution {
             evaluations: 1,
             steps: 0,
             rejections: 0,
+            before: stretch.start,
             last_step: stretch.first_step,
         }
     }
@@ -267,6 +270,7 @@ pub fn integrate<E: Equations>(
         evaluations: stats.map_or(0, |s| u64::from(s.num_eval)),
         steps,
         rejections: stats.map_or(0, |s| u64::from(s.rejected_steps)),
+        before: inner.before,
         last_step: inner.last_step,
     }
 }

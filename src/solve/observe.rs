@@ -12,9 +12,10 @@ const STILL: f64 = 1e-6;
 
 /// Depth below zero, as a fraction or in kg/m3 or kg, that an amount may reach
 /// within the tolerance of the integration while it is none: an explicit step
-/// dips a little before the first smoke comes. Shown as zero; what lies deeper
-/// is shown as it is.
-const NONE: f64 = 2e-5;
+/// dips a little before the first smoke comes. The absolute tolerance of a
+/// layer's species, 2e-7 of the room's air, over the thinnest layer, 2e-3 of
+/// it. Shown as zero; what lies deeper is shown as it is.
+const NONE: f64 = 1e-4;
 
 /// Zero for what is none within the tolerance.
 fn present(amount: f64) -> f64 {

@@ -593,6 +593,7 @@ impl Passage {
                         (interface - moment / flow).max(0.0),
                         layers[into[LOWER]].temperature,
                     );
+                stream.slopes[0] = JET_EXPONENT * stream.lifted / flow;
             }
             let [flow, heat, moment] = falling;
             if flow > 0.0 {
@@ -604,6 +605,7 @@ impl Passage {
                         (moment / flow - interface).max(0.0),
                         layers[into[UPPER]].temperature,
                     );
+                stream.slopes[1] = JET_EXPONENT * stream.dragged / flow;
             }
         }
         self.streams[direction] = stream;

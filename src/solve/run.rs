@@ -96,8 +96,15 @@ impl Output {
         }
     }
 
-    /// Rows of a stretch after its start, up to the time it reached.
-    pub fn stretch(&mut self, driver: &mut Driver<'_, '_>, solution: &Solution, start: f64) {
+    /// Rows of a stretch after its start, up to the time it reached; one at that
+    /// very time when it is a `landing`.
+    pub fn stretch(
+        &mut self,
+        driver: &mut Driver<'_, '_>,
+        solution: &Solution,
+        start: f64,
+        landing: bool,
+    ) {
         let mut n = (start / self.every).floor() + 1.0;
         while n * self.every < solution.time - 1e-9 {
             let time = n * self.every;
@@ -108,7 +115,10 @@ impl Output {
             }
             n += 1.0;
         }
-        self.row(driver, solution.time, &solution.state);
+        let on_grid = (n * self.every - solution.time).abs() < 1e-9;
+        if landing || on_grid {
+            self.row(driver, solution.time, &solution.state);
+        }
     }
 }
 

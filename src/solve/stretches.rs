@@ -27,6 +27,9 @@ const ABSOLUTE_SHARE: f64 = 0.1;
 const INSTANT: f64 = 1e-9;
 const JUMP: f64 = 1e-6;
 
+/// Precision to which the call for a change of the cut openings is located, s.
+const MOMENT: f64 = 1e-6;
+
 /// Share of a stretch to which a change of the tight groups is located.
 const RESOLUTION: f64 = 1e-6;
 
@@ -59,11 +62,16 @@ pub fn stretches(driver: &mut Driver<'_, '_>, state: &mut Vec<f64>, out: &mut Ou
             relative: plan.choices.tolerance,
             absolute: ABSOLUTE_SHARE * plan.choices.tolerance,
         };
-        let solution = integrate(driver, &scale, &stretch, state);
+        let mut solution = integrate(driver, &scale, &stretch, state);
+        if solution.outcome == Outcome::Stopped && !driver.interrupted {
+            locate(driver, &mut solution);
+        }
         let (refusal, changed) = outcome(driver, &solution);
         out.work.steps += solution.steps;
         out.work.rejections += solution.rejections;
-        out.stretch(driver, &solution, time);
+        let landed = landing.time - solution.time < 1e-9;
+        let over = driver.interrupted || matches!(solution.outcome, Outcome::Failed(_));
+        out.stretch(driver, &solution, time, landed || over);
         time = solution.time;
         state.clone_from(&solution.state);
         first_step = RESTART_STEP;
@@ -72,7 +80,7 @@ pub fn stretches(driver: &mut Driver<'_, '_>, state: &mut Vec<f64>, out: &mut Ou
             Outcome::Failed(why) if !changed => return Ended::Failed(time, explain(why, refusal)),
             _ => {}
         }
-        if landing.time - time < 1e-9 {
+        if landed {
             if !landing.restart && !changed && solution.outcome == Outcome::Reached {
                 first_step = solution.last_step;
             }
@@ -80,6 +88,28 @@ pub fn stretches(driver: &mut Driver<'_, '_>, state: &mut Vec<f64>, out: &mut Ou
         }
     }
     Ended::Completed
+}
+
+/// Takes a solution that was stopped for a change of the cut openings back to
+/// the moment at which it was called for, so that it does not depend on where
+/// the steps happened to end.
+fn locate(driver: &mut Driver<'_, '_>, solution: &mut Solution) {
+    let mut rates = vec![0.0; solution.state.len()];
+    let mut calls = |time: f64, state: &[f64]| {
+        driver.evaluate(time, state, &mut rates).is_ok() && driver.calls_for_change()
+    };
+    let (mut low, mut high) = (solution.before, solution.time);
+    while high - low > MOMENT {
+        let middle = 0.5 * (low + high);
+        match solution.at(middle) {
+            Some(state) if calls(middle, &state) => high = middle,
+            _ => low = middle,
+        }
+    }
+    if let Some(state) = solution.at(high) {
+        calls(high, &state);
+        (solution.time, solution.state) = (high, state);
+    }
 }
 
 /// Why the last evaluation was refused, and whether other openings are cut
