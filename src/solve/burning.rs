@@ -25,6 +25,10 @@ pub const HEAT_PER_AIR: f64 = 3.03e6;
 /// flames beside it (own choice).
 const NEIGHBOUR_FLAME: f64 = 0.05;
 
+/// Share of its mass over which an item that burns as given fades out when the
+/// curve asks for more than there is (own choice).
+const LAST: f64 = 0.01;
+
 /// Band above the flame tip over which it still lights the layer, m (own choice).
 const PILOT_BAND: f64 = 0.5;
 
@@ -237,7 +241,11 @@ fn free(item: &Item, plan: &Plan, building: &Building, index: usize, time: f64, 
                 burn_out(mass, source.mass, share) / burn_out(source.mass, source.mass, share);
             free_release(curve, clock) * left
         }
-        Burning::AsGiven(curve) => free_release(curve, time - item.ignition),
+        Burning::AsGiven(curve) => {
+            // It cannot give off more than there is.
+            let mass = y[building.layout.item(index, ItemPlace::Mass)];
+            free_release(curve, time - item.ignition) * smoothstep(mass / (LAST * source.mass))
+        }
         Burning::Burner { rate, ramp, .. } => {
             rate * ((time - item.ignition) / ramp.max(1e-3)).clamp(0.0, 1.0)
         }

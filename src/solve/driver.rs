@@ -11,8 +11,9 @@ use super::triggers::Triggers;
 /// jumps there is seen from inside.
 const INSIDE: f64 = 1e-9;
 
-/// Rate of a difference (Pa/s) so slow that it is as good as quasi-steady.
-const SLOW: f64 = 20.0;
+/// Time for which an opening stays cut, s, so that a room whose pressure
+/// swings is not cut and let go at every step.
+const HOLD: f64 = 1.0;
 
 /// The model with what the run needs to know about it.
 pub struct Driver<'a, 'w> {
@@ -26,8 +27,10 @@ pub struct Driver<'a, 'w> {
     pub cut: Vec<bool>,
     /// Changes that wait for a condition.
     pub triggers: Triggers,
-    /// The last accepted step passed the level of a trigger.
-    pub triggered: bool,
+    /// When each of them was cut last, s.
+    since: Vec<f64>,
+    /// Time of the last evaluation, s.
+    time: f64,
     watch: &'w mut dyn FnMut(f64) -> bool,
     window: (f64, f64),
 }
@@ -41,7 +44,8 @@ impl<'a, 'w> Driver<'a, 'w> {
             interrupted: false,
             cut: vec![false; openings],
             triggers: Triggers::new(model.plan.triggers.len()),
-            triggered: false,
+            since: vec![0.0; openings],
+            time: 0.0,
             model,
             watch,
             window: (0.0, 0.0),
@@ -60,23 +64,37 @@ impl<'a, 'w> Driver<'a, 'w> {
     /// As [`Model::evaluate`].
     pub fn evaluate(&mut self, time: f64, y: &[f64], dy: &mut [f64]) -> Result<(), Refusal> {
         let (start, end) = self.window;
+        self.time = time;
         self.model.evaluate(time.clamp(start, end), y, dy)
     }
 
-    /// Pressure difference across an opening by the given room pressures, and
-    /// its rate as far as it is dynamic, when there is a way through.
-    fn difference(&self, opening: usize, pressure: impl Fn(usize) -> f64) -> Option<(f64, f64)> {
+    /// Pressure difference across an opening by the given room pressures, when
+    /// there is a way through.
+    fn difference(&self, opening: usize, pressure: impl Fn(usize) -> f64) -> Option<f64> {
         let passage = &self.model.balance.passages[opening];
-        let rate = |room| {
-            let group = self.model.group_of(room);
-            group.map_or(0.0, |g| self.model.balance.group_rate(g))
-        };
-        let [first, second] = passage.rooms().map(|room| {
-            let pressure = room.map_or(0.0, &pressure);
-            (pressure, room.map_or(0.0, rate))
-        });
-        let way = passage.stand.coefficient_width > 0.0;
-        way.then_some((first.0 - second.0, first.1 - second.1))
+        let [first, second] = passage
+            .rooms()
+            .map(|room| room.map_or(0.0, |r| pressure(r)));
+        (passage.stand.coefficient_width > 0.0).then_some(first - second)
+    }
+
+    /// Difference towards which a dynamic one is on its way, Pa: a way out evens
+    /// a group's pressure at a rate that goes with the root of the difference.
+    fn destination(&self, opening: usize, difference: f64) -> f64 {
+        let balance = &self.model.balance;
+        let (mut rate, mut evening) = (0.0, 0.0);
+        for (room, sign) in balance.passages[opening]
+            .rooms()
+            .into_iter()
+            .zip([1.0, -1.0])
+        {
+            if let Some(group) = room.and_then(|r| self.model.group_of(r)) {
+                rate += sign * balance.group_rate(group);
+                evening += balance.evening(group);
+            }
+        }
+        let root = difference.abs().sqrt().copysign(difference) + rate / evening.max(1e-9);
+        root * root
     }
 
     /// True when both sides of an opening share one mean pressure, that of a
@@ -94,7 +112,7 @@ impl<'a, 'w> Driver<'a, 'w> {
             && self.quasi_steady(opening)
             && self
                 .difference(opening, pressure)
-                .is_some_and(|(p, _)| p.is_nan() || p.abs() > OVERPRESSURE)
+                .is_some_and(|p| p.is_nan() || p.abs() > OVERPRESSURE)
     }
 
     /// True when the difference across a cut opening is small again and will
@@ -102,9 +120,20 @@ impl<'a, 'w> Driver<'a, 'w> {
     fn relieved(&self, opening: usize) -> bool {
         let pressure = |room| self.model.balance.pressure(room);
         self.cut[opening]
+            && self.time - self.since[opening] > HOLD
             && self
                 .difference(opening, pressure)
-                .is_none_or(|(p, rate)| p.abs() < RELEASE && (p * rate < 0.0 || rate.abs() < SLOW))
+                .is_none_or(|p| p.abs() < RELEASE && self.destination(opening, p) < 2.0 * RELEASE)
+    }
+
+    /// True when by the last evaluation, at this time and state, an opening is to
+    /// be cut or let go, or a trigger is passed.
+    pub fn calls_for_change(&self, time: f64, y: &[f64]) -> bool {
+        if self.triggers.passed(&self.model, time, y).is_some() {
+            return true;
+        }
+        let pressure = |room| self.model.balance.pressure(room);
+        (0..self.cut.len()).any(|o| self.relieved(o) || self.strained(o, pressure))
     }
 
     /// After the last evaluation: cuts openings across which the quasi-steady
@@ -143,8 +172,11 @@ impl<'a, 'w> Driver<'a, 'w> {
     }
 
     fn cut_also(&mut self, also: &[bool]) -> bool {
-        for (cut, also) in self.cut.iter_mut().zip(also) {
-            *cut |= also;
+        for (n, also) in also.iter().enumerate() {
+            if *also {
+                self.cut[n] = true;
+                self.since[n] = self.time;
+            }
         }
         also.iter().any(|also| *also)
     }
@@ -158,11 +190,6 @@ impl Equations for Driver<'_, '_> {
 
     fn accepted(&mut self, time: f64, y: &[f64]) -> bool {
         self.interrupted = (self.watch)(time);
-        self.triggered = self.triggers.passed(&self.model, time, y).is_some();
-        self.interrupted
-            || self.triggered
-            || (0..self.cut.len()).any(|o| {
-                self.relieved(o) || self.strained(o, |room| self.model.balance.pressure(room))
-            })
+        self.interrupted || self.calls_for_change(time, y)
     }
 }

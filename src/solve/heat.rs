@@ -398,8 +398,10 @@ impl Scene<'_> {
             * convected
             * between
             / (gas[upper].heat_capacity * even);
-        // Heat given up between the temperatures of the two layers.
-        let given = flow * gas[upper].heat_capacity * between;
+        // Heat given up between the temperatures of the two layers; the gas must
+        // not arrive colder than the layer that it joins.
+        let at_lower = dot(self.layers.fractions(upper), self.layers.enthalpies(lower));
+        let given = flow * (gas[upper].enthalpy - at_lower);
         changes.transfer(self.layers, upper, lower, flow);
         changes.heat(lower, -given);
         changes.heat(upper, given);

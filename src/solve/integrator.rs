@@ -18,6 +18,9 @@ use std::cell::RefCell;
 /// Slope that stands for a refused evaluation, in scaled units per second.
 const REFUSED_SLOPE: f64 = 1e12;
 
+/// Evaluations of one step.
+const STAGES: u32 = 6;
+
 /// Most steps of one stretch.
 const MOST_STEPS: u32 = 200_000;
 
@@ -75,6 +78,8 @@ pub struct Solution {
     pub steps: u64,
     /// Rejected steps.
     pub rejections: u64,
+    /// Start of the last step, s.
+    pub before: f64,
     /// Mean accepted step, s, as a start for the next stretch.
     pub last_step: f64,
 }
@@ -92,6 +97,7 @@ impl Solution {
             evaluations: 1,
             steps: 0,
             rejections: 0,
+            before: stretch.start,
             last_step: stretch.first_step,
         }
     }
@@ -115,9 +121,9 @@ struct Inner<'a, E> {
     dy: Vec<f64>,
     fault: Option<String>,
     stopped: bool,
-    /// Refused evaluations so far, and whether the last one was.
+    /// Refused evaluations so far, and evaluations since the last one.
     refusals: u32,
-    refused: bool,
+    since_refusal: u32,
     time: f64,
     before: f64,
     last_step: f64,
@@ -141,8 +147,9 @@ impl<E: Equations> System<f64, DVector<f64>> for Adapter<'_, '_, E> {
             && inner
                 .equations
                 .rates(time + self.shift, &inner.y, &mut inner.dy);
-        inner.refused = !taken || inner.dy.iter().any(|r| !r.is_finite());
-        if inner.refused {
+        inner.since_refusal = inner.since_refusal.saturating_add(1);
+        if !taken || inner.dy.iter().any(|r| !r.is_finite()) {
+            inner.since_refusal = 0;
             // Never twice the same: equal slopes in all stages of a step would
             // cancel in its error estimate.
             inner.refusals = inner.refusals.wrapping_add(1);
@@ -164,9 +171,9 @@ impl<E: Equations> System<f64, DVector<f64>> for Adapter<'_, '_, E> {
         inner.last_step = time - inner.time;
         inner.before = inner.time;
         inner.time = time;
-        // The last stage is the evaluation at the accepted state.
-        if inner.refused {
-            inner.fault = Some("a step led to a state that cannot be".into());
+        // A step so small that refused slopes pass its error test is no step.
+        if inner.since_refusal < STAGES {
+            inner.fault = Some("no step was small enough".into());
             return true;
         }
         if inner.y.iter().any(|y| !y.is_finite()) {
@@ -200,7 +207,7 @@ pub fn integrate<E: Equations>(
         fault: None,
         stopped: false,
         refusals: 0,
-        refused: false,
+        since_refusal: u32::MAX,
         time: stretch.start,
         before: stretch.start,
         last_step: stretch.first_step,
@@ -263,6 +270,7 @@ pub fn integrate<E: Equations>(
         evaluations: stats.map_or(0, |s| u64::from(s.num_eval)),
         steps,
         rejections: stats.map_or(0, |s| u64::from(s.rejected_steps)),
+        before: inner.before,
         last_step: inner.last_step,
     }
 }

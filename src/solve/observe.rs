@@ -11,6 +11,22 @@ use crate::record::{Column, Quantity, Subject};
 /// Flow below which a direction counts as still, kg/s.
 const STILL: f64 = 1e-6;
 
+/// Depth below zero, as a fraction or in kg/m3 or kg, that an amount may reach
+/// within the tolerance of the integration while it is none: an explicit step
+/// dips a little before the first smoke comes. The absolute tolerance of a
+/// layer's species, 2e-7 of the room's air, over the thinnest layer, 2e-3 of
+/// it. Shown as zero; what lies deeper is shown as it is.
+const NONE: f64 = 1e-4;
+
+/// Zero for what is none within the tolerance.
+fn present(amount: f64) -> f64 {
+    if amount > -NONE {
+        amount.max(0.0)
+    } else {
+        amount
+    }
+}
+
 /// Collects output rows into columns.
 pub struct Observer {
     /// Output times, s.
@@ -205,7 +221,7 @@ impl Observer {
         self.put(s, Q::FlamedShare, place(ItemPlace::Flamed));
         self.put(s, Q::EmberActivity, place(ItemPlace::Embers));
         self.put(s, Q::BaseOxygen, place(ItemPlace::Oxygen));
-        self.put(s, Q::FuelLeft, place(ItemPlace::Mass));
+        self.put(s, Q::FuelLeft, present(place(ItemPlace::Mass)));
         self.put(s, Q::FlameHeight, rates.flame_height);
         self.put(s, Q::Progress, place(ItemPlace::Progress));
         self.put(s, Q::FreshAirAtBase, rates.lower_share);
@@ -228,15 +244,15 @@ fn composition(model: &Model<'_>, layer: usize) -> [f64; 7] {
     let fractions = model.layers.fractions(layer);
     let inverse = model.building.gas.inverse_molar_mass();
     let moles = dot(fractions, inverse);
-    let share = |s: usize| fractions[s] * inverse[s] / moles;
+    let share = |s: usize| present(fractions[s] * inverse[s] / moles);
     let fuel: f64 = fractions[FIRST_FUEL..].iter().sum();
     [
         share(O2),
         share(O2) / (1.0 - share(H2O)),
-        fuel,
+        present(fuel),
         share(CO),
         share(CO2),
         share(H2O),
-        fractions[SOOT] * model.layers.layers[layer].density,
+        present(fractions[SOOT] * model.layers.layers[layer].density),
     ]
 }

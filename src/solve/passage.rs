@@ -19,6 +19,10 @@ use crate::plan::{Fan, FanKind, Opening, Space};
 /// layer, K.
 const DEPOSIT_STEP: f64 = 10.0;
 
+/// Exponent with which entrainment by a jet goes with its flow at one
+/// temperature: 1/3 far from its opening, 0.6 near it.
+const JET_EXPONENT: f64 = 0.45;
+
 /// Depth that stands for the band of a horizontal opening or a fan, m; only its
 /// place matters.
 const LYING_DEPTH: f64 = 1e-3;
@@ -42,6 +46,8 @@ pub struct Stream {
     pub dragged: f64,
     /// Highest pressure difference that drives it, Pa.
     pub peak_difference: f64,
+    /// Change of what is lifted and dragged with the flow that does it.
+    slopes: [f64; 2],
 }
 
 impl Stream {
@@ -422,6 +428,7 @@ impl Passage {
                         (interface - moment / flow).max(0.0),
                         layers[into[LOWER]].temperature,
                     );
+                stream.slopes[0] = JET_EXPONENT * stream.lifted / flow;
             }
             let [flow, heat, moment] = falling;
             if flow > 0.0 {
@@ -433,6 +440,7 @@ impl Passage {
                         (moment / flow - interface).max(0.0),
                         layers[into[UPPER]].temperature,
                     );
+                stream.slopes[1] = JET_EXPONENT * stream.dragged / flow;
             }
         }
         self.streams[direction] = stream;
@@ -469,10 +477,16 @@ impl Passage {
                 residual[room] += stream.lifted * up + stream.dragged * down;
             }
         }
-        self.add_slopes(layers, matrix, unknowns);
+        self.add_slopes(layers, internal, matrix, unknowns);
     }
 
-    fn add_slopes(&self, layers: &Layers, matrix: &mut [f64], unknowns: usize) {
+    fn add_slopes(
+        &self,
+        layers: &Layers,
+        internal: &[[f64; 2]],
+        matrix: &mut [f64],
+        unknowns: usize,
+    ) {
         for (band, part) in self.bands.as_slice().iter().zip(&self.parts) {
             let direction = usize::from(!band.forward);
             let source = self.source(direction);
@@ -482,14 +496,20 @@ impl Passage {
             } else {
                 -band.slope
             };
+            let (from, to) = (self.rooms[direction], self.rooms[1 - direction]);
+            let [lifts, drags] = self.streams[direction].slopes;
+            let [up, down] = to.map_or([0.0; 2], |room| internal[room]);
+            let jet = 1.0 - self.stand.leak_share;
             let (mut out, mut gain) = (0.0, 0.0);
             for k in 0..2 {
+                let drawn = slope * part.drawn[k];
                 let growth = self.growth[direction][k];
                 let raised = part.raised[k];
-                out -= slope * part.drawn[k] / layers.layers[source[k]].density;
-                gain += slope * part.drawn[k] * (growth[0] * (1.0 - raised) + growth[1] * raised);
+                let deposit = jet * self.deposit[direction][k];
+                out -= drawn / layers.layers[source[k]].density;
+                gain += drawn * (growth[0] * (1.0 - raised) + growth[1] * raised);
+                gain += drawn * (deposit * lifts * up + (jet - deposit) * drags * down);
             }
-            let (from, to) = (self.rooms[direction], self.rooms[1 - direction]);
             for (row, change) in [(from, out), (to, gain)] {
                 let Some(row) = row else { continue };
                 if let Some(first) = self.rooms[0] {

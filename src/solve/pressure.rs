@@ -30,6 +30,9 @@ const PRESSURE_NOISE: f64 = 1e-13;
 /// flows that no search can settle.
 const NOISE: f64 = 8.0 * f64::EPSILON;
 
+/// Share of the promised fall of the residual that a step must bring.
+const SUFFICIENT: f64 = 0.1;
+
 /// Most iterations before the state is given up.
 const MOST_ITERATIONS: usize = 60;
 
@@ -79,6 +82,8 @@ pub struct Balance {
     rooms: usize,
     /// Tight group of each room.
     group_of: Vec<Option<usize>>,
+    /// Evening-out of the groups' pressures, see [`Balance::evening`].
+    evening: Vec<f64>,
     fixed: Vec<f64>,
     stiffness: Vec<f64>,
     internal: Vec<[f64; 2]>,
@@ -129,6 +134,7 @@ impl Balance {
             solution: vec![0.0; 2 * n],
             rooms: n,
             group_of: vec![None; n],
+            evening: vec![0.0; n],
             fixed: vec![0.0; n],
             stiffness: vec![0.0; n],
             internal: vec![[0.0; 2]; n],
@@ -150,6 +156,12 @@ impl Balance {
     /// Rate of the mean pressure of a tight group, Pa/s.
     pub fn group_rate(&self, group: usize) -> f64 {
         self.solution[self.rooms + group]
+    }
+
+    /// Rate at which a tight group's pressure evens out through all its ways, over
+    /// the root of the difference, Pa^(1/2)/s.
+    pub fn evening(&self, group: usize) -> f64 {
+        self.evening[group]
     }
 
     /// Gauge pressure of a room (Pa) that the last search for a balance tried
@@ -216,7 +228,10 @@ impl Balance {
                 self.trial[i] = self.solution[i] + factor * self.step[i];
             }
             norm = self.evaluate(problem);
-            if norm <= 1.0 || largest(&self.residual[..unknowns], &self.held) < before {
+            let merit = largest(&self.residual[..unknowns], &self.held);
+            // Armijo's condition: a full step across the root's zero lands as far
+            // on the other side and would go to and fro for ever.
+            if norm <= 1.0 || merit < (1.0 - SUFFICIENT * factor) * before {
                 break;
             }
             factor *= 0.5;
@@ -277,7 +292,8 @@ impl Balance {
                 .map(|(passage, o)| coefficient_area(o, &passage.stand))
                 .sum();
             let stiffness: f64 = group.rooms.iter().map(|r| self.stiffness[*r]).sum();
-            let root = area * speed / (stiffness * EVENING_RATE);
+            self.evening[g] = area * speed / stiffness;
+            let root = self.evening[g] / EVENING_RATE;
             let wide = (root * root).min(WIDEST_REGULARISATION);
             for n in 0..self.passages.len() {
                 if leads_out(&self.passages[n]) {

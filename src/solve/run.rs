@@ -95,17 +95,17 @@ impl Output {
         }
     }
 
-    /// Rows of a stretch after its start, up to an end and the state there.
+    /// Rows of a stretch after its start, up to the time it reached; one at that
+    /// very time when it is a `landing`.
     pub fn stretch(
         &mut self,
         driver: &mut Driver<'_, '_>,
         solution: &Solution,
         start: f64,
-        end: f64,
-        state: &[f64],
+        landing: bool,
     ) {
         let mut n = (start / self.every).floor() + 1.0;
-        while n * self.every < end - 1e-9 {
+        while n * self.every < solution.time - 1e-9 {
             let time = n * self.every;
             if time > start + 1e-9
                 && let Some(y) = solution.at(time)
@@ -114,7 +114,10 @@ impl Output {
             }
             n += 1.0;
         }
-        self.row(driver, end, state);
+        let on_grid = (n * self.every - solution.time).abs() < 1e-9;
+        if landing || on_grid {
+            self.row(driver, solution.time, &solution.state);
+        }
     }
 }
 

@@ -6,10 +6,10 @@ use super::derivative::Refusal;
 use super::driver::Driver;
 use super::groups::{settle, tight};
 use super::integrator::{Outcome, Solution, Stretch, integrate};
+use super::layout::Account;
 use super::pressure::TightGroup;
 use super::run::Output;
 use super::schedule::{Landing, Schedule, Stand, stand};
-use super::triggers::RESOLUTION as RESOLUTION_OF_TRIGGERS;
 use crate::plan::Plan;
 use crate::record::Ended;
 
@@ -21,6 +21,14 @@ const LONGEST_STEP: f64 = 10.0;
 
 /// Absolute tolerance of the scaled state as a share of the relative one.
 const ABSOLUTE_SHARE: f64 = 0.1;
+
+/// Time to either side of a landing within which what changes has jumped, s,
+/// and the least change of the open share of an opening that is one.
+const INSTANT: f64 = 1e-9;
+const JUMP: f64 = 1e-6;
+
+/// Precision to which the call for a change of the cut openings is located, s.
+const MOMENT: f64 = 1e-6;
 
 /// Share of a stretch to which a change of the tight groups is located.
 const RESOLUTION: f64 = 1e-6;
@@ -48,20 +56,16 @@ pub fn stretches(driver: &mut Driver<'_, '_>, state: &mut Vec<f64>, out: &mut Ou
             relative: plan.choices.tolerance,
             absolute: ABSOLUTE_SHARE * plan.choices.tolerance,
         };
-        let solution = integrate(driver, &scale, &stretch, state);
-        out.work.steps += solution.steps;
-        out.work.rejections += solution.rejections;
-        first_step = RESTART_STEP;
-        if driver.triggered && solution.outcome == Outcome::Stopped && !driver.interrupted {
-            let (crossed, there) = locate(driver, &solution, time);
-            out.stretch(driver, &solution, time, crossed, &there);
-            time = crossed;
-            *state = there;
-            fire(driver, time, state);
-            continue;
+        let mut solution = integrate(driver, &scale, &stretch, state);
+        if solution.outcome == Outcome::Stopped && !driver.interrupted {
+            locate(driver, &mut solution);
         }
         let (refusal, changed) = outcome(driver, &solution);
-        out.stretch(driver, &solution, time, solution.time, &solution.state);
+        out.work.steps += solution.steps;
+        out.work.rejections += solution.rejections;
+        let landed = landing.time - solution.time < 1e-9;
+        let over = driver.interrupted || matches!(solution.outcome, Outcome::Failed(_));
+        out.stretch(driver, &solution, time, landed || over);
         time = solution.time;
         state.clone_from(&solution.state);
         match &solution.outcome {
@@ -69,7 +73,7 @@ pub fn stretches(driver: &mut Driver<'_, '_>, state: &mut Vec<f64>, out: &mut Ou
             Outcome::Failed(why) if !changed => return Ended::Failed(time, explain(why, refusal)),
             _ => {}
         }
-        let landed = landing.time - time < 1e-9;
+        first_step = RESTART_STEP;
         if landed && !landing.restart && !changed && solution.outcome == Outcome::Reached {
             first_step = solution.last_step;
         }
@@ -85,32 +89,27 @@ fn next_landing(schedule: &Schedule, time: f64, end: f64) -> Landing {
     })
 }
 
-/// Finds where in a stretch the first level of a trigger was passed, and the
-/// state there.
-fn locate(driver: &mut Driver<'_, '_>, solution: &Solution, start: f64) -> (f64, Vec<f64>) {
+/// Takes a solution that was stopped for a change of the cut openings or for a
+/// trigger back to the moment at which it was called for, so that it does not
+/// depend on where the steps happened to end; fires what is passed there.
+fn locate(driver: &mut Driver<'_, '_>, solution: &mut Solution) {
     let mut rates = vec![0.0; solution.state.len()];
-    let (mut low, mut high) = (start, solution.time);
-    let mut there = solution.state.clone();
-    while high - low > RESOLUTION_OF_TRIGGERS {
+    let mut calls = |time: f64, state: &[f64]| {
+        driver.evaluate(time, state, &mut rates).is_ok() && driver.calls_for_change(time, state)
+    };
+    let (mut low, mut high) = (solution.before, solution.time);
+    while high - low > MOMENT {
         let middle = 0.5 * (low + high);
-        let Some(y) = solution.at(middle) else { break };
-        let passed = driver.evaluate(middle, &y, &mut rates).is_ok()
-            && driver.triggers.passed(&driver.model, middle, &y).is_some();
-        if passed {
-            high = middle;
-            there = y;
-        } else {
-            low = middle;
+        match solution.at(middle) {
+            Some(state) if calls(middle, &state) => high = middle,
+            _ => low = middle,
         }
     }
-    (high, there)
-}
-
-/// Fires what is passed at a time and state.
-fn fire(driver: &mut Driver<'_, '_>, time: f64, y: &[f64]) {
-    let mut rates = vec![0.0; y.len()];
-    if driver.evaluate(time, y, &mut rates).is_ok() {
-        driver.triggers.fire(&mut driver.model, time, y);
+    if let Some(state) = solution.at(high) {
+        calls(high, &state);
+        (solution.time, solution.state) = (high, state);
+        let state = &solution.state;
+        driver.triggers.fire(&mut driver.model, high, state);
     }
 }
 
@@ -131,6 +130,8 @@ fn outcome(driver: &mut Driver<'_, '_>, solution: &Solution) -> (Option<Refusal>
 fn begin(driver: &mut Driver<'_, '_>, state: &mut [f64], time: f64, landing: f64) -> f64 {
     let (plan, building) = (driver.model.plan, driver.model.building);
     let mut rates = vec![0.0; state.len()];
+    let at = building.layout.account(Account::EnergyLost);
+    state[at] += heat_of_jumps(driver, time, state);
     // Every pass cuts at least one more opening.
     loop {
         let schedule = &driver.model.schedule;
@@ -155,6 +156,25 @@ fn begin(driver: &mut Driver<'_, '_>, state: &mut [f64], time: f64, landing: f64
             return end;
         }
     }
+}
+
+/// Heat that leaves with leaves that open in no time at `time`, J; negative when
+/// they bring it back.
+fn heat_of_jumps(driver: &Driver<'_, '_>, time: f64, state: &[f64]) -> f64 {
+    let (plan, building) = (driver.model.plan, driver.model.building);
+    let mut lost = 0.0;
+    for leaf in &building.leaves {
+        let opening = &plan.openings[leaf.opening];
+        let schedule = &driver.model.schedule;
+        let [before, after] = [time - INSTANT, time + INSTANT].map(|time| {
+            let width = schedule.clear_width(leaf.opening, time);
+            (width / opening.width).clamp(0.0, 1.0)
+        });
+        if (after - before).abs() > JUMP {
+            lost += leaf.area * (after - before) * building.stored(leaf.slab, state);
+        }
+    }
+    lost
 }
 
 fn stands(plan: &Plan, schedule: &Schedule, time: f64) -> Vec<Stand> {

@@ -6,9 +6,6 @@ use super::layout::UPPER;
 use crate::plan::{Effect, Trigger, Watched};
 use crate::record::Fired;
 
-/// Time to which a crossing is located, s.
-pub const RESOLUTION: f64 = 1e-3;
-
 /// Which triggers have fired.
 #[derive(Debug, Clone)]
 pub struct Triggers {

@@ -93,8 +93,11 @@ fn columns(plan: &Plan, record: &Record, faults: &mut Vec<String>) {
 /// Oxygen volume fraction of the outside air, wet.
 fn outside_oxygen(plan: &Plan) -> f64 {
     let open = &plan.open_air;
-    let vapour =
-        doorglow::physics::humidity::vapour_fraction(open.temperature, open.humidity, open.pressure);
+    let vapour = doorglow::physics::humidity::vapour_fraction(
+        open.temperature,
+        open.humidity,
+        open.pressure,
+    );
     let air = doorglow::physics::gas::moist_air(vapour, 6);
     let moles: f64 = air
         .iter()

@@ -447,3 +447,66 @@ pub fn plan(seed: u64) -> Plan {
         tactic: None,
     }
 }
+
+/// A plan in another order, and where each room, opening and item went.
+pub struct Reordered {
+    /// The plan.
+    pub plan: Plan,
+    /// New index of each room.
+    pub rooms: Vec<usize>,
+    /// New index of each opening.
+    pub openings: Vec<usize>,
+    /// New index of each item.
+    pub items: Vec<usize>,
+}
+
+fn placed<T: Clone>(list: &[T], order: &[usize]) -> Vec<T> {
+    order.iter().map(|old| list[*old].clone()).collect()
+}
+
+fn inverse(order: &[usize]) -> Vec<usize> {
+    let mut inverse = vec![0; order.len()];
+    for (new, old) in order.iter().enumerate() {
+        inverse[*old] = new;
+    }
+    inverse
+}
+
+/// The same building with rooms, openings, fuels and items in a drawn order.
+pub fn reordered(plan: &Plan, seed: u64) -> Reordered {
+    let mut dice = Dice::new(seed);
+    let rooms = dice.order(plan.rooms.len());
+    let openings = dice.order(plan.openings.len());
+    let items = dice.order(plan.items.len());
+    let fuels = dice.order(plan.fuels.len());
+    let mut out = plan.clone();
+    out.rooms = placed(&plan.rooms, &rooms);
+    out.openings = placed(&plan.openings, &openings);
+    out.items = placed(&plan.items, &items);
+    out.fuels = placed(&plan.fuels, &fuels);
+    let (rooms, openings) = (inverse(&rooms), inverse(&openings));
+    let (items, fuels) = (inverse(&items), inverse(&fuels));
+    let room = |space: Space| match space {
+        Space::Room(old) => Space::Room(RoomId(rooms[old.0])),
+        Space::OpenAir => Space::OpenAir,
+    };
+    for opening in &mut out.openings {
+        (opening.from, opening.to) = (room(opening.from), room(opening.to));
+    }
+    for wall in &mut out.shared_walls {
+        wall.between = wall.between.map(|old| RoomId(rooms[old.0]));
+    }
+    for item in &mut out.items {
+        item.room = RoomId(rooms[item.room.0]);
+        item.fuel = FuelId(fuels[item.fuel.0]);
+    }
+    for action in &mut out.actions {
+        action.opening = OpeningId(openings[action.opening.0]);
+    }
+    Reordered {
+        plan: out,
+        rooms,
+        openings,
+        items,
+    }
+}

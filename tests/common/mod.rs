@@ -1,6 +1,7 @@
 //! Plans built by hand for tests of the solver.
 #![allow(dead_code)]
 
+pub mod checks;
 pub mod generated;
 
 use doorglow::plan::{

@@ -402,8 +402,9 @@ class Model:
             m = u.available * step(excess / 10) * share * wall_q * excess / (u.cp * (excess**2 + 400))
             d_u -= m * u.y
             d_l += m * u.y
-            h_u += m * u.cp * excess - m * u.h
-            h_l += m * u.h - m * u.cp * excess
+            arrives = m * float(u.y @ lo.h_species)
+            h_u -= arrives
+            h_l += arrives
         if excess < 0:
             rate = step(-excess / 5) * u.available * lo.available * min(u.volume, lo.volume) / 10
             mu, ml = rate * u.density, rate * lo.density
