@@ -30,6 +30,11 @@ const PRESSURE_NOISE: f64 = 1e-13;
 /// flows that no search can settle.
 const NOISE: f64 = 8.0 * f64::EPSILON;
 
+/// Share of the fall of the residual promised by a step that it must bring. A
+/// square root answers a whole step from one side of its zero with the same
+/// residual on the other, and would go to and fro for ever.
+const LEAST_FALL: f64 = 0.1;
+
 /// Most iterations before the state is given up.
 const MOST_ITERATIONS: usize = 60;
 
@@ -216,7 +221,8 @@ impl Balance {
                 self.trial[i] = self.solution[i] + factor * self.step[i];
             }
             norm = self.evaluate(problem);
-            if norm <= 1.0 || largest(&self.residual[..unknowns], &self.held) < before {
+            let enough = (1.0 - LEAST_FALL * factor) * before;
+            if norm <= 1.0 || largest(&self.residual[..unknowns], &self.held) < enough {
                 break;
             }
             factor *= 0.5;

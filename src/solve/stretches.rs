@@ -6,6 +6,7 @@ use super::derivative::Refusal;
 use super::driver::Driver;
 use super::groups::{settle, tight};
 use super::integrator::{Outcome, Solution, Stretch, integrate};
+use super::layout::Account;
 use super::pressure::TightGroup;
 use super::run::Output;
 use super::schedule::{Landing, Schedule, Stand, stand};
@@ -34,8 +35,16 @@ pub fn stretches(driver: &mut Driver<'_, '_>, state: &mut Vec<f64>, out: &mut Ou
     let scale = driver.model.building.scales();
     let mut time = 0.0;
     let mut first_step = RESTART_STEP;
+    let mut jumped = f64::NEG_INFINITY;
     while plan.end - time > 1e-9 {
         let landing = next_landing(&driver.model.schedule, time, plan.end);
+        // A rate books what leaves with a leaf that moves, not with one that
+        // jumps. A stretch may begin twice at the same time.
+        if time > jumped {
+            let lost = driver.model.heat_of_jumps(time, state);
+            state[driver.model.building.layout.account(Account::EnergyLost)] += lost;
+            jumped = time;
+        }
         let end = begin(driver, state, time, landing.time);
         if time <= 0.0 {
             out.row(driver, time, state);

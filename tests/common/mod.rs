@@ -1,7 +1,9 @@
 //! Plans built by hand for tests of the solver.
 #![allow(dead_code)]
 
+pub mod checks;
 pub mod generated;
+pub mod moving_air;
 
 use doorglow::plan::{
     Burning, Choices, Course, Fuel, FuelId, Item, Lining, OpenAir, Opening, OpeningKind, Plan,
