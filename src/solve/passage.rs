@@ -312,13 +312,15 @@ impl Passage {
         };
         let up = flow.driven.max(0.0);
         let down = (-flow.driven).max(0.0);
-        let slope = |on: f64| if on > 0.0 { flow.slope } else { 0.0 };
-        bands.push(band(
-            false,
-            high * (down + flow.exchange),
-            high * slope(down),
-        ));
-        bands.push(band(true, low * (up + flow.exchange), low * slope(up)));
+        // Without a difference the slope is steepest and must go one way, or
+        // the balance has none.
+        let (rising, falling) = if flow.driven >= 0.0 {
+            (flow.slope, 0.0)
+        } else {
+            (0.0, flow.slope)
+        };
+        bands.push(band(false, high * (down + flow.exchange), high * falling));
+        bands.push(band(true, low * (up + flow.exchange), low * rising));
         bands
     }
 

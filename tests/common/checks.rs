@@ -8,8 +8,13 @@ use doorglow::record::{Ended, Quantity, Record, Subject};
 /// Layer guard of the solver, as a share of the room.
 pub const LAYER_GUARD: f64 = 2e-3;
 
-/// Columns that are empty (not a number) by definition where nothing flows.
-const MAY_BE_EMPTY: [Quantity; 2] = [Quantity::NeutralPlane, Quantity::TemperatureForward];
+/// Columns that are empty (not a number) by definition where nothing flows or
+/// there is no glass.
+const MAY_BE_EMPTY: [Quantity; 3] = [
+    Quantity::NeutralPlane,
+    Quantity::TemperatureForward,
+    Quantity::PaneTemperature,
+];
 
 /// All faults of a record, in words; none when it holds.
 pub fn faults(plan: &Plan, record: &Record) -> Vec<String> {

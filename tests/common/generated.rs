@@ -501,7 +501,9 @@ pub fn reordered(plan: &Plan, seed: u64) -> Reordered {
         item.fuel = FuelId(fuels[item.fuel.0]);
     }
     for action in &mut out.actions {
-        action.opening = OpeningId(openings[action.opening.0]);
+        if let Effect::ClearWidth { opening, .. } = &mut action.effect {
+            *opening = OpeningId(openings[opening.0]);
+        }
     }
     Reordered {
         plan: out,

@@ -3,6 +3,7 @@
 
 pub mod checks;
 pub mod generated;
+pub mod moving_air;
 
 use doorglow::plan::{
     Burning, Choices, Course, Fuel, FuelId, Item, Lining, OpenAir, Opening, OpeningKind, Plan,
