@@ -67,7 +67,7 @@ fn conserve_the_draw_has_what_it_should() {
     let shared = share(&|p| !p.shared_walls.is_empty());
     let moved = share(&|p| p.actions.len() > 3);
     let repeated = share(&|p| {
-        let o = |n: usize| p.actions[n].opening;
+        let o = |n: usize| p.actions[n].effect.opening();
         (1..p.actions.len()).any(|n| (0..n).any(|m| o(m) == o(n)))
     });
     let mixed = share(&|p| p.fuels.len() == 3);
