@@ -1,5 +1,7 @@
 //! Every way air moves, in plans drawn by lot: closures, bounds, no chattering,
 //! mirrored buildings, names.
+// Tables for `--nocapture`.
+#![allow(clippy::print_stdout)]
 
 mod common;
 

@@ -1,5 +1,7 @@
 //! Where the momentum of wind or a fan mixes a corridor, a kneeling person
 //! meets the corridor's mean.
+// Tables for `--nocapture`.
+#![allow(clippy::print_stdout)]
 
 mod common;
 

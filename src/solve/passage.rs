@@ -503,12 +503,12 @@ impl Passage {
             let [up, down] = to.map_or([0.0; 2], |room| internal[room]);
             let jet = 1.0 - self.stand.leak_share;
             let (mut out, mut gain) = (0.0, 0.0);
-            for k in 0..2 {
+            for (k, from) in source.into_iter().enumerate() {
                 let drawn = slope * part.drawn[k];
                 let growth = self.growth[direction][k];
                 let raised = part.raised[k];
                 let deposit = jet * self.deposit[direction][k];
-                out -= drawn / layers.layers[source[k]].density;
+                out -= drawn / layers.layers[from].density;
                 gain += drawn * (growth[0] * (1.0 - raised) + growth[1] * raised);
                 gain += drawn * (deposit * lifts * up + (jet - deposit) * drags * down);
             }

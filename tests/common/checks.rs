@@ -36,7 +36,7 @@ fn ledger(record: &Record, faults: &mut Vec<String>) {
         ("carbon", ledger.carbon, 1e-6),
         ("energy", ledger.energy, 1e-3),
     ] {
-        if !(closure.relative <= limit) {
+        if closure.relative.is_nan() || closure.relative > limit {
             faults.push(format!("{what} closes to {:.1e}", closure.relative));
         }
     }
