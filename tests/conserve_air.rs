@@ -62,7 +62,7 @@ fn conserve_three_hundred_plans_of_moving_air() {
                 moving_air::plan(seed)
             };
             let record = run(&plan);
-            let mut faults = checks::faults(&plan, &record);
+            let mut faults = checks::faults_within(&plan, &record, 1e-4);
             let turns = turns(&plan, &record);
             if turns.0 > 12 {
                 faults.push(format!("{turns:?} turns a minute"));

@@ -262,7 +262,7 @@ impl Passage {
         let second = self.side(problem, 1, trial, wind);
         self.bands = match self.way {
             Way::Opening(o) if problem.openings[o].kind.is_horizontal() => {
-                self.lying(&problem.openings[o], &first, &second)
+                self.lying(problem, &problem.openings[o], &first, &second)
             }
             Way::Opening(o) => bands_regularised(
                 &first,
@@ -285,12 +285,28 @@ impl Passage {
         }
     }
 
+    /// Density of what is drawn from a layer of a side, kg/m3: a layer that is
+    /// all but gone gives the other's gas, and the volume is what counts.
+    fn drawn_density(&self, problem: &Problem<'_>, side: usize, layer: usize) -> f64 {
+        let [own, other] =
+            [layer, 1 - layer].map(|k| &problem.layers.layers[self.sides[side][k]]);
+        let weight = own.available;
+        1.0 / (weight / own.density + (1.0 - weight) / other.density)
+    }
+
     /// Bands of a horizontal opening: what the pressure drives one way, and
     /// the buoyant exchange both ways.
-    fn lying(&self, opening: &Opening, below: &Side, above: &Side) -> Bands {
+    fn lying(
+        &self,
+        problem: &Problem<'_>,
+        opening: &Opening,
+        below: &Side,
+        above: &Side,
+    ) -> Bands {
         let height = opening.head;
         let area = self.stand.coefficient_width / opening.coefficient;
-        let (low, high) = (below.density[UPPER], above.density[LOWER]);
+        let low = self.drawn_density(problem, 0, UPPER);
+        let high = self.drawn_density(problem, 1, LOWER);
         let difference = below.pressure_at(height) - above.pressure_at(height);
         let flow = horizontal_regularised(
             area,
@@ -352,7 +368,8 @@ impl Passage {
         let upper = smoothstep((intake - first.interface) / INTAKE_BAND + 0.5);
         let mut bands = Bands::default();
         for (from_upper, share) in [(false, 1.0 - upper), (true, upper)] {
-            let scale = first.density[usize::from(from_upper)] * share * self.running * open;
+            let density = self.drawn_density(problem, 0, usize::from(from_upper));
+            let scale = density * share * self.running * open;
             bands.push(Band {
                 bottom: outlet - LYING_DEPTH,
                 top: outlet,
