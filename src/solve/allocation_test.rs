@@ -6,15 +6,13 @@ mod common;
 
 use super::building::Building;
 use super::derivative::Model;
-use super::schedule::Schedule;
 use crate::plan::Plan;
 
 fn allocations_of_evaluations(plan: &Plan) -> u64 {
     let Ok(building) = Building::new(plan) else {
         return u64::MAX;
     };
-    let schedule = Schedule::new(plan);
-    let mut model = Model::new(plan, &building, &schedule);
+    let mut model = Model::new(plan, &building);
     let state = building.initial_state(plan);
     let mut rates = vec![0.0; state.len()];
     let info = allocation_counter::measure(|| {

@@ -288,21 +288,14 @@ impl Passage {
     /// Density of what is drawn from a layer of a side, kg/m3: a layer that is
     /// all but gone gives the other's gas, and the volume is what counts.
     fn drawn_density(&self, problem: &Problem<'_>, side: usize, layer: usize) -> f64 {
-        let [own, other] =
-            [layer, 1 - layer].map(|k| &problem.layers.layers[self.sides[side][k]]);
+        let [own, other] = [layer, 1 - layer].map(|k| &problem.layers.layers[self.sides[side][k]]);
         let weight = own.available;
         1.0 / (weight / own.density + (1.0 - weight) / other.density)
     }
 
     /// Bands of a horizontal opening: what the pressure drives one way, and
     /// the buoyant exchange both ways.
-    fn lying(
-        &self,
-        problem: &Problem<'_>,
-        opening: &Opening,
-        below: &Side,
-        above: &Side,
-    ) -> Bands {
+    fn lying(&self, problem: &Problem<'_>, opening: &Opening, below: &Side, above: &Side) -> Bands {
         let height = opening.head;
         let area = self.stand.coefficient_width / opening.coefficient;
         let low = self.drawn_density(problem, 0, UPPER);

@@ -165,9 +165,13 @@ fn guarded_layers(plan: &Plan, record: &Record, faults: &mut Vec<String>) {
 /// True where more than the fire moves the air of a room.
 fn driven(plan: &Plan, room: usize) -> bool {
     let here = |space| space == Space::Room(doorglow::plan::RoomId(room));
-    let lying = |o: &doorglow::plan::Opening| o.kind.is_horizontal() && (here(o.from) || here(o.to));
+    let lying =
+        |o: &doorglow::plan::Opening| o.kind.is_horizontal() && (here(o.from) || here(o.to));
     !plan.fans.is_empty()
-        || plan.openings.iter().any(|o| o.wind_pressure != 0.0 || lying(o))
+        || plan
+            .openings
+            .iter()
+            .any(|o| o.wind_pressure != 0.0 || lying(o))
 }
 
 fn upper_share(plan: &Plan, record: &Record, room: usize, n: usize) -> f64 {

@@ -6,7 +6,7 @@ pub mod generated;
 pub mod moving_air;
 
 use doorglow::plan::{
-    Action, Burning, Choices, Course, Curve, Fuel, FuelId, Item, Lining, OpenAir, Opening,
+    Action, Burning, Choices, Course, Curve, Effect, Fuel, FuelId, Item, Lining, OpenAir, Opening,
     OpeningId, OpeningKind, Plan, Room, RoomId, Space,
 };
 
@@ -195,10 +195,7 @@ pub fn one_room_door() -> Plan {
     let mut plan = plan(
         600.0,
         vec![room("room", 3.7, 3.7, 2.4, &gypsum)],
-        vec![
-            door("door", 0, None, 0.9, 2.0, false),
-            gap(0, 2.4, 0.01),
-        ],
+        vec![door("door", 0, None, 0.9, 2.0, false), gap(0, 2.4, 0.01)],
         vec![polyurethane()],
         vec![Item {
             name: "item".into(),
@@ -220,8 +217,10 @@ pub fn one_room_door() -> Plan {
         name: "entry".into(),
         time: 240.0,
         over: 2.0,
-        opening: OpeningId(0),
-        clear_width: 0.9,
+        effect: Effect::ClearWidth {
+            opening: OpeningId(0),
+            width: 0.9,
+        },
         what: "open".into(),
         because: None,
     });
