@@ -3,31 +3,17 @@
 //! which affects nothing beyond its tolerance. Allocates nothing.
 
 use super::building::Building;
-use super::burning::{self, ItemRates, burn};
+use super::burning::{self, ItemRates};
 use super::changes::Changes;
 use super::heat::{self, RoomRadiation};
 use super::layers::Layers;
-use super::layout::{Account, ItemPlace, LOWER, UPPER};
+use super::layout::{ItemPlace, LOWER, UPPER};
 use super::pressure::{Balance, Problem, TightGroup};
 use super::schedule::{Schedule, stand};
-use crate::physics::extinction::{burning_factor, limiting_oxygen};
-use crate::physics::gas::{FIRST_FUEL, O2};
 use crate::physics::glass;
-use crate::physics::smooth::{min8, smoothstep};
+use crate::physics::smooth::smoothstep;
 use crate::plan::{FanKind, Plan};
 use nalgebra::Vector4;
-
-/// Mass fraction of fuel at which burning in jets is half stopped for want of
-/// fuel in the receiving layer; keeps the lagged heat from taking fuel that is
-/// not there (own choice).
-const JET_FUEL: f64 = 2e-4;
-
-/// The same for oxygen.
-const JET_OXYGEN: f64 = 5e-3;
-
-/// Lit fuel leaving at which the whole release of the room begins to count for
-/// the flame outside, W (own choice).
-const FLAMES_OUTSIDE: f64 = 100e3;
 
 /// Time in which a room whose upper layer is denser than its lower one turns
 /// over, s (own choice).
@@ -72,14 +58,14 @@ pub struct Model<'a> {
     pub guards: u64,
     /// The last refusal.
     pub refusal: Option<Refusal>,
-    changes: Changes,
-    fluxes: Vec<[f64; 2]>,
-    neighbours: Vec<f64>,
-    extra: Vec<Vector4<f64>>,
-    pilot: Vec<f64>,
-    mean_pressure: Vec<f64>,
-    group_pressure: Vec<f64>,
-    losses: heat::Losses,
+    pub(super) changes: Changes,
+    pub(super) fluxes: Vec<[f64; 2]>,
+    pub(super) neighbours: Vec<f64>,
+    pub(super) extra: Vec<Vector4<f64>>,
+    pub(super) pilot: Vec<f64>,
+    pub(super) mean_pressure: Vec<f64>,
+    pub(super) group_pressure: Vec<f64>,
+    pub(super) losses: heat::Losses,
 }
 
 impl<'a> Model<'a> {
@@ -183,36 +169,6 @@ impl<'a> Model<'a> {
             let open = self.balance.passages[leaf.opening].stand.clear_width / opening.width;
             self.areas[leaf.slab] += leaf.area * (1.0 - open).clamp(0.0, 1.0);
         }
-    }
-
-    /// Heat that leaves with opening leaves, W; negative when they bring it
-    /// back.
-    fn heat_of_leaves(&self, time: f64, y: &[f64]) -> f64 {
-        let mut lost = 0.0;
-        for leaf in &self.building.leaves {
-            let opening = &self.plan.openings[leaf.opening];
-            let rate = self.schedule.widening(leaf.opening, time) / opening.width;
-            if rate != 0.0 {
-                lost += leaf.area * rate * self.building.stored(leaf.slab, y);
-            }
-        }
-        lost
-    }
-
-    /// Heat that leaves at a moment with leaves that jump open, J; negative when
-    /// they jump shut.
-    pub fn heat_of_jumps(&self, time: f64, y: &[f64]) -> f64 {
-        let mut lost = 0.0;
-        for leaf in &self.building.leaves {
-            let (o, width) = (leaf.opening, self.plan.openings[leaf.opening].width);
-            let open = |clear: f64| (clear / width).clamp(0.0, 1.0);
-            let jump = open(self.schedule.clear_width(o, time))
-                - open(self.schedule.clear_width_before(o, time));
-            if jump != 0.0 {
-                lost += leaf.area * jump * self.building.stored(leaf.slab, y);
-            }
-        }
-        lost
     }
 
     fn read_pressures(&mut self, y: &[f64]) {
@@ -331,53 +287,6 @@ impl<'a> Model<'a> {
         }
     }
 
-    /// Flame factor of a layer for the fuel vapours it carries.
-    fn flame_factor(&self, layer: usize) -> f64 {
-        let gas = &self.layers.layers[layer];
-        let vapours = &self.layers.fractions(layer)[FIRST_FUEL..];
-        let (mut sum, mut limit) = (1e-12, 1e-12 * 0.135);
-        for (fuel, y) in self.plan.fuels.iter().zip(vapours) {
-            sum += y.max(0.0);
-            limit += y.max(0.0) * fuel.limiting_oxygen;
-        }
-        let choices = &self.plan.choices;
-        let limit = limiting_oxygen(
-            limit / sum,
-            choices.critical_flame_temperature,
-            gas.temperature,
-        );
-        burning_factor(gas.oxygen, limit, choices.limit_width)
-    }
-
-    /// Burns the lagged heat of the jets in the upper layer that they enter.
-    fn burn_jets_in(&mut self, room: usize, y: &[f64]) -> f64 {
-        let wanted = y[self.building.layout.jets(room)].max(0.0);
-        if wanted <= 0.0 {
-            return 0.0;
-        }
-        let upper = 2 * room + UPPER;
-        let fractions = self.layers.fractions(upper);
-        let reactions = &self.building.reactions;
-        let oxygen = fractions[O2].max(0.0);
-        let heat_of = |f: usize| fractions[FIRST_FUEL + f].max(0.0) * reactions[f].heat;
-        let fuel: f64 = fractions[FIRST_FUEL..].iter().map(|y| y.max(0.0)).sum();
-        let heat: f64 = (0..reactions.len()).map(heat_of).sum();
-        if heat <= 0.0 {
-            return 0.0;
-        }
-        let power = wanted * fuel / (fuel + JET_FUEL) * oxygen / (oxygen + JET_OXYGEN);
-        for (f, reaction) in reactions.iter().enumerate() {
-            burn(
-                &mut self.changes,
-                upper,
-                reaction,
-                f,
-                power * heat_of(f) / heat,
-            );
-        }
-        power
-    }
-
     /// A room whose upper layer is denser than its lower one turns over: equal
     /// volumes change places.
     fn overturn(&mut self) {
@@ -422,66 +331,6 @@ impl<'a> Model<'a> {
             self.changes.transfer(&self.layers, l, u, up);
             self.changes.transfer(&self.layers, u, l, down);
         }
-    }
-
-    /// What the jets could burn, towards which their lagged heat moves.
-    fn burn_in_jets(&mut self, y: &[f64], dy: &mut [f64]) {
-        let layout = &self.building.layout;
-        let lag = self.plan.choices.jet_lag;
-        for room in 0..self.building.rooms.len() {
-            dy[layout.jets(room)] = -y[layout.jets(room)] / lag;
-        }
-        for o in 0..self.balance.passages.len() {
-            self.outside[o] = 0.0;
-            for direction in 0..2 {
-                let (fuel, oxygen) = self.jet(o, direction);
-                if fuel <= 0.0 {
-                    continue;
-                }
-                match self.balance.passages[o].rooms()[1 - direction] {
-                    Some(room) => dy[layout.jets(room)] += min8(fuel, oxygen) / lag,
-                    None => self.outside[o] += fuel,
-                }
-            }
-        }
-    }
-
-    /// Heat of the lit fuel in a stream, and heat that the oxygen it meets can
-    /// release, W.
-    fn jet(&self, opening: usize, direction: usize) -> (f64, f64) {
-        let passage = &self.balance.passages[opening];
-        let stream = &passage.streams[direction];
-        let source = passage.source(direction);
-        let into = passage.destination(direction);
-        let (mut fuel, mut oxygen, mut need) = (0.0, 0.0, 0.0);
-        let Some(room) = passage.rooms()[direction] else {
-            return (0.0, 0.0);
-        };
-        for (k, from) in source.into_iter().enumerate() {
-            let flow = stream.of_layer(k);
-            if flow <= 0.0 {
-                continue;
-            }
-            let gas = &self.layers.layers[from];
-            let own = burning::own_ignition(&self.plan.choices, gas.temperature);
-            let pilot = if k == UPPER { self.pilot[room] } else { 0.0 };
-            let lit = 1.0 - (1.0 - own) * (1.0 - pilot);
-            if lit <= 0.0 {
-                continue;
-            }
-            let fractions = self.layers.fractions(from);
-            for (f, reaction) in self.building.reactions.iter().enumerate() {
-                let rate = flow * fractions[FIRST_FUEL + f].max(0.0);
-                fuel += lit * rate * reaction.heat;
-                need += lit * rate * reaction.oxygen;
-            }
-            oxygen += self.flame_factor(from) * flow * fractions[O2].max(0.0);
-        }
-        if need <= 0.0 {
-            return (0.0, 0.0);
-        }
-        oxygen += stream.lifted * self.layers.fractions(into[LOWER])[O2].max(0.0);
-        (fuel, oxygen * fuel / need)
     }
 
     /// Glass heated by the layers and surfaces of the room behind it.
@@ -549,87 +398,5 @@ impl<'a> Model<'a> {
                 dy[layout.item(i, place)] = rate;
             }
         }
-    }
-
-    /// Heat released everywhere, W.
-    pub fn heat_released(&self) -> f64 {
-        self.items.iter().map(|i| i.burned).sum::<f64>()
-            + self.in_layers.iter().sum::<f64>()
-            + self.in_jets.iter().sum::<f64>()
-    }
-
-    /// Heat release that counts for the flame outside an opening, W: that of the
-    /// room behind it and of the lit fuel that leaves, once such fuel leaves.
-    pub fn release_behind(&self, opening: usize) -> f64 {
-        let outside = self.outside[opening];
-        let rooms = self.balance.passages[opening].rooms();
-        let (Some(room), true) = (rooms[0].or(rooms[1]), outside > 0.0) else {
-            return 0.0;
-        };
-        let items = self.items.iter().zip(&self.building.items);
-        let inside = items
-            .filter(|(_, source)| source.room == room)
-            .map(|(rates, _)| rates.burned)
-            .sum::<f64>()
-            + self.in_layers[room]
-            + self.in_jets[room];
-        outside + inside * outside / (outside + FLAMES_OUTSIDE)
-    }
-
-    /// Flow of outside air into the building, kg/s.
-    pub fn air_in(&self) -> f64 {
-        self.balance
-            .passages
-            .iter()
-            .map(|p| match p.rooms() {
-                [None, _] => p.streams[0].total(),
-                [_, None] => p.streams[1].total(),
-                _ => 0.0,
-            })
-            .sum()
-    }
-
-    fn keep_ledger(&self, time: f64, y: &[f64], dy: &mut [f64]) {
-        let layout = &self.building.layout;
-        let outside = self.layers.outside();
-        let air = self.layers.layers[outside];
-        let inflow = self.air_in();
-        // The outside collects outflow less inflow.
-        let net = self.changes.species(outside);
-        let oxygen = &self.building.oxygen_share;
-        let carbon = &self.building.carbon_share;
-        let fractions = self.layers.fractions(outside);
-        let dot = super::layers::dot;
-        let mut set = |account, value| dy[layout.account(account)] = value;
-        let (mut mass, mut o, mut c) = (0.0, 0.0, 0.0);
-        for (item, source) in self.items.iter().zip(&self.building.items) {
-            let rate = item.given_off / self.building.reactions[source.fuel].heat;
-            mass += rate;
-            o += rate * oxygen[FIRST_FUEL + source.fuel];
-            c += rate * carbon[FIRST_FUEL + source.fuel];
-        }
-        set(Account::MassGained, inflow + mass);
-        set(Account::MassLost, net.iter().sum::<f64>() + inflow);
-        set(Account::OxygenGained, inflow * dot(fractions, oxygen) + o);
-        set(
-            Account::OxygenLost,
-            dot(net, oxygen) + inflow * dot(fractions, oxygen),
-        );
-        set(Account::CarbonGained, inflow * dot(fractions, carbon) + c);
-        set(
-            Account::CarbonLost,
-            dot(net, carbon) + inflow * dot(fractions, carbon),
-        );
-        let released = self.heat_released();
-        set(Account::HeatReleased, released);
-        set(Account::EnergyGained, released + inflow * air.enthalpy);
-        set(
-            Account::EnergyLost,
-            self.changes.enthalpy(outside)
-                + inflow * air.enthalpy
-                + self.losses.radiation
-                + self.losses.backs
-                + self.heat_of_leaves(time, y),
-        );
     }
 }

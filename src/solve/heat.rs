@@ -1,11 +1,12 @@
 //! Heat between gas, flames, linings and the next space: radiation by the
 //! enclosure method, convection, wall-cooled downflow, conduction.
 
-use super::building::{Building, Face};
+use super::building::Building;
 use super::burning::ItemRates;
 use super::changes::Changes;
 use super::layers::{Layers, dot};
 use super::layout::{LOWER, UPPER};
+use super::linings::Face;
 use super::passage::Passage;
 use crate::physics::conduction;
 use crate::physics::emissivity::{layer_emissivity, mean_beam_length};
