@@ -42,6 +42,10 @@ pub const FULL_FROUDE: f64 = 2.0;
 /// its own widths, `0.32 x/d` (Ricou and Spalding 1961, from memory).
 pub const TURNS: f64 = 8.0;
 
+/// Density difference about which its size is rounded, and which counts in any
+/// room, kg/m3 (choice; about 1 K).
+pub const ALIKE: f64 = 0.004;
+
 /// What enters a room through its openings, for the speed of its jets.
 #[derive(Debug, Clone, Copy, PartialEq, Default)]
 pub struct Entering {
@@ -49,6 +53,8 @@ pub struct Entering {
     flow: f64,
     /// Flow times speed squared, m5/s3.
     power: f64,
+    /// Flow times the size of its density difference to the room, kg/s.
+    weight: f64,
 }
 
 impl Entering {
@@ -60,6 +66,26 @@ impl Entering {
             let speed = net_flow / area;
             self.flow += net_flow;
             self.power += net_flow * speed * speed;
+        }
+    }
+
+    /// Notes how much a net flow (m3/s, as given to [`Entering::add`]) differs
+    /// from the room in density (kg/m3, either sign): what is much lighter or
+    /// heavier than the room makes layers of its own.
+    pub fn differs(&mut self, net_flow: f64, difference: f64) {
+        if net_flow > 0.0 {
+            self.weight += net_flow * difference.hypot(ALIKE);
+        }
+    }
+
+    /// Mean size of the density difference between what enters and the room,
+    /// weighted by flow, kg/m3.
+    #[must_use]
+    pub fn contrast(&self) -> f64 {
+        if self.flow > 0.0 {
+            self.weight / self.flow
+        } else {
+            0.0
         }
     }
 

@@ -235,6 +235,7 @@ impl Building {
         for (r, room) in self.rooms.iter().enumerate() {
             scale[layout.upper_volume(r)] = room.volume;
             scale[layout.jets(r)] = 1e6;
+            scale[layout.turnover(r)] = 0.1;
             scale[layout.pressure(r)] = PRESSURE_SCALE;
             for layer in [LOWER, UPPER] {
                 for at in layout.layer(r, layer) {

@@ -11,9 +11,14 @@ use super::layout::{ItemPlace, LOWER, UPPER};
 use super::pressure::{Balance, Problem, TightGroup};
 use super::schedule::{Schedule, stand};
 use crate::physics::glass;
+use crate::physics::mixing;
 use crate::physics::smooth::smoothstep;
 use crate::plan::{FanKind, Plan};
 use nalgebra::Vector4;
+
+/// Lag of mixing by momentum, s: a stream needs some seconds to stir a room,
+/// and the pressures must not hang on it (own choice).
+const MIXING_LAG: f64 = 2.0;
 
 /// Time in which a room whose upper layer is denser than its lower one turns
 /// over, s (own choice).
@@ -63,6 +68,8 @@ pub struct Model<'a> {
     pub(super) neighbours: Vec<f64>,
     pub(super) extra: Vec<Vector4<f64>>,
     pub(super) pilot: Vec<f64>,
+    pub(super) mixed: Vec<f64>,
+    pub(super) exchange: Vec<f64>,
     pub(super) mean_pressure: Vec<f64>,
     pub(super) group_pressure: Vec<f64>,
     pub(super) losses: heat::Losses,
@@ -92,6 +99,8 @@ impl<'a> Model<'a> {
             neighbours: vec![0.0; n],
             extra: vec![Vector4::zeros(); n],
             pilot: vec![0.0; n],
+            mixed: vec![0.0; n],
+            exchange: vec![0.0; n],
             mean_pressure: vec![0.0; n],
             group_pressure: Vec::with_capacity(n),
             losses: heat::Losses::default(),
@@ -139,18 +148,27 @@ impl<'a> Model<'a> {
         self.exchange_heat(y, dy);
         self.burn_layers(y);
         self.overturn();
+        self.mix(y);
+        let problem = Problem {
+            building: self.building,
+            openings: &self.plan.openings,
+            fans: &self.plan.fans,
+            mixed: &self.mixed,
+            choices: &self.plan.choices,
+            layers: &self.layers,
+            changes: &self.changes,
+            groups: &self.groups,
+            group_pressure: &self.group_pressure,
+        };
         self.balance
-            .solve(&Problem {
-                building: self.building,
-                openings: &self.plan.openings,
-                fans: &self.plan.fans,
-                choices: &self.plan.choices,
-                layers: &self.layers,
-                changes: &self.changes,
-                groups: &self.groups,
-                group_pressure: &self.group_pressure,
-            })
+            .solve(&problem)
             .map_err(|_| Refusal::Pressure)?;
+        let layout = &self.building.layout;
+        for room in 0..self.building.rooms.len() {
+            let (share, turnover) = self.balance.mixing(&problem, room);
+            dy[layout.mixed(room)] = (share - y[layout.mixed(room)]) / MIXING_LAG;
+            dy[layout.turnover(room)] = (turnover - y[layout.turnover(room)]) / MIXING_LAG;
+        }
         self.move_gas();
         self.burn_in_jets(y, dy);
         self.heat_panes(y, dy);
@@ -305,6 +323,28 @@ impl<'a> Model<'a> {
         }
     }
 
+    /// Layers that momentum mixes change places in equal volumes, by the lagged
+    /// share and turnover.
+    fn mix(&mut self, y: &[f64]) {
+        let layout = &self.building.layout;
+        for room in 0..self.building.rooms.len() {
+            let share = y[layout.mixed(room)].clamp(0.0, 1.0);
+            let turnover = y[layout.turnover(room)].max(0.0);
+            self.mixed[room] = share;
+            let (l, u) = (2 * room + LOWER, 2 * room + UPPER);
+            let (low, up) = (self.layers.layers[l], self.layers.layers[u]);
+            let thin = low.volume.min(up.volume);
+            let exchange = low.available
+                * up.available
+                * mixing::exchange_rate(thin, share, 1.0 / turnover.max(1e-9));
+            self.exchange[room] = exchange;
+            self.changes
+                .transfer(&self.layers, l, u, exchange * low.density);
+            self.changes
+                .transfer(&self.layers, u, l, exchange * up.density);
+        }
+    }
+
     fn move_gas(&mut self) {
         for passage in &self.balance.passages {
             for direction in 0..2 {
@@ -320,16 +360,6 @@ impl<'a> Model<'a> {
                 self.changes.transfer(&self.layers, l, u, stream.lifted);
                 self.changes.transfer(&self.layers, u, l, stream.dragged);
             }
-        }
-        for (room, mixing) in self.balance.mixing.iter().enumerate() {
-            let (l, u) = (2 * room + LOWER, 2 * room + UPPER);
-            let layers = &self.layers.layers;
-            let (up, down) = (
-                mixing.exchange * layers[l].density,
-                mixing.exchange * layers[u].density,
-            );
-            self.changes.transfer(&self.layers, l, u, up);
-            self.changes.transfer(&self.layers, u, l, down);
         }
     }
 

@@ -2,7 +2,7 @@
 //! outside this file.
 //!
 //! Order: rooms (volume of the upper layer, species masses of lower and upper
-//! layer, burning in jets), items (progress, mass, flamed share, embers,
+//! layer, burning in jets, mixing by momentum), items (progress, mass, flamed share, embers,
 //! oxygen breathed), slabs (node temperatures), mean pressure of tight groups
 //! (one place per room), panes (one place per opening), ledger.
 
@@ -29,6 +29,9 @@ pub enum ItemPlace {
 }
 
 const ITEM_PLACES: usize = 5;
+
+/// Places of a room before its layers.
+const ROOM_PLACES: usize = 4;
 
 /// Accounts of the ledger.
 #[derive(Debug, Clone, Copy)]
@@ -76,7 +79,7 @@ impl Layout {
         nodes: &[usize],
         openings: usize,
     ) -> Self {
-        let items_at = rooms * (2 + 2 * species);
+        let items_at = rooms * (ROOM_PLACES + 2 * species);
         let mut at = items_at + items * ITEM_PLACES;
         let mut slabs = Vec::with_capacity(nodes.len());
         for n in nodes {
@@ -103,7 +106,7 @@ impl Layout {
     }
 
     fn room(&self, room: usize) -> usize {
-        room * (2 + 2 * self.species)
+        room * (ROOM_PLACES + 2 * self.species)
     }
 
     /// Volume of the upper layer of a room, m3.
@@ -116,9 +119,19 @@ impl Layout {
         self.room(room) + 1
     }
 
+    /// How far momentum mixes a room, 0..1, lagged.
+    pub fn mixed(&self, room: usize) -> usize {
+        self.room(room) + 2
+    }
+
+    /// Rate at which what goes through turns a room's gas over, 1/s, lagged.
+    pub fn turnover(&self, room: usize) -> usize {
+        self.room(room) + 3
+    }
+
     /// Species masses of one layer of a room, kg.
     pub fn layer(&self, room: usize, layer: usize) -> Range<usize> {
-        let at = self.room(room) + 2 + layer * self.species;
+        let at = self.room(room) + ROOM_PLACES + layer * self.species;
         at..at + self.species
     }
 

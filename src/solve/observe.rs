@@ -152,10 +152,10 @@ impl Observer {
         self.put(s, Q::FloorTemperature, surfaces[3]);
         let radiation = &model.radiation[room];
         self.put(s, Q::FloorFlux, scene.floor_flux(radiation, room));
-        let mixing = &model.balance.mixing[room];
+
         let (low, up) = (low.density, up.density);
-        self.put(s, Q::Mixing, mixing.exchange * 0.5 * (low + up));
-        self.put(s, Q::MixedShare, mixing.share);
+        self.put(s, Q::Mixing, model.exchange[room] * 0.5 * (low + up));
+        self.put(s, Q::MixedShare, model.mixed[room]);
         self.put(s, Q::LayerEmissivity, radiation.emissivity);
         self.put(s, Q::BurnedInSmoke, model.in_layers[room]);
         self.put(s, Q::BurnedInJets, model.in_jets[room]);

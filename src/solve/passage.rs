@@ -201,20 +201,22 @@ impl Passage {
     }
 
     /// What does not depend on the pressures.
-    pub fn prepare(&mut self, layers: &Layers) {
+    pub fn prepare(&mut self, layers: &Layers, mixed: &[f64]) {
         for direction in 0..2 {
             let source = self.source(direction);
             let into = self.destination(direction);
-            if self.rooms[1 - direction].is_none() {
+            let Some(room) = self.rooms[1 - direction] else {
                 continue;
-            }
+            };
             let (low, up) = (&layers.layers[into[LOWER]], &layers.layers[into[UPPER]]);
             let reference =
                 low.available * low.temperature + (1.0 - low.available) * up.temperature;
             for (k, &from) in source.iter().enumerate() {
                 let gas = &layers.layers[from];
-                self.deposit[direction][k] =
-                    smoothstep((gas.temperature - reference) / DEPOSIT_STEP);
+                let buoyant = smoothstep((gas.temperature - reference) / DEPOSIT_STEP);
+                // Where momentum mixes the room, both layers get their part.
+                let even = up.volume / (low.volume + up.volume);
+                self.deposit[direction][k] = buoyant + mixed[room] * (even - buoyant);
                 self.growth[direction][k] = into.map(|into| layers.growth(from, into));
             }
         }

@@ -55,25 +55,12 @@ pub struct TightGroup {
 #[derive(Debug, Clone, Copy, PartialEq, Eq)]
 pub struct NoBalance;
 
-/// Mixing of a room's layers by momentum.
-#[derive(Debug, Clone, Copy, Default)]
-pub struct Mixing {
-    /// What enters the room.
-    pub entering: mixing::Entering,
-    /// How far the room is mixed, 0..1.
-    pub share: f64,
-    /// Volume that changes places each way, m3/s.
-    pub exchange: f64,
-}
-
 /// The balance with its working memory; the solution is kept as the start of
 /// the next one.
 #[derive(Debug, Clone)]
 pub struct Balance {
     /// Openings in the order of the plan, then fans.
     pub passages: Vec<Passage>,
-    /// Mixing of the layers by momentum, per room.
-    pub mixing: Vec<Mixing>,
     /// Newton iterations so far.
     pub iterations: u64,
     /// Gauge pressures at the rooms' floors (Pa), then the rates of the tight
@@ -105,6 +92,8 @@ pub struct Problem<'a> {
     pub openings: &'a [Opening],
     /// Fans of the plan.
     pub fans: &'a [Fan],
+    /// How far momentum mixes each room, 0..1.
+    pub mixed: &'a [f64],
     /// Coefficients.
     pub choices: &'a Choices,
     /// Layers.
@@ -129,7 +118,6 @@ impl Balance {
                 .map(|(i, o)| Passage::of_opening(i, o, outside))
                 .chain(driven.map(|(i, f)| Passage::of_fan(i, f, openings, outside)))
                 .collect(),
-            mixing: vec![Mixing::default(); n],
             iterations: 0,
             solution: vec![0.0; 2 * n],
             rooms: n,
@@ -259,7 +247,7 @@ impl Balance {
                 / layers.pressure[r];
         }
         for passage in &mut self.passages {
-            passage.prepare(layers);
+            passage.prepare(layers, problem.mixed);
         }
         self.regularise(problem);
     }
@@ -329,7 +317,6 @@ impl Balance {
                 unknowns,
             );
         }
-        self.mix(problem);
         self.groups(problem, unknowns);
         for i in 0..unknowns {
             // What the last digits of the pressures make of the flows.
@@ -340,19 +327,17 @@ impl Balance {
         largest(&self.residual[..unknowns], &self.allowed)
     }
 
-    /// Mixing of the layers by the momentum of what goes through a room.
-    fn mix(&mut self, problem: &Problem<'_>) {
-        for mixing in &mut self.mixing {
-            *mixing = Mixing::default();
-        }
-        if problem.choices.mixing_factor <= 0.0 {
-            return;
-        }
+    /// How far the momentum of what goes through a room would mix it, and how
+    /// fast it turns its gas over (1/s), by the solution found.
+    pub fn mixing(&self, problem: &Problem<'_>, room: usize) -> (f64, f64) {
+        let [low, up] = [2 * room + LOWER, 2 * room + UPPER].map(|k| &problem.layers.layers[k]);
+        let mean = (low.mass + up.mass) / (low.volume + up.volume);
+        let mut entering = mixing::Entering::default();
         for passage in &self.passages {
             for direction in 0..2 {
-                let Some(room) = passage.rooms()[1 - direction] else {
+                if passage.rooms()[1 - direction] != Some(room) {
                     continue;
-                };
+                }
                 let volume = |direction: usize| -> f64 {
                     let stream = &passage.streams[direction];
                     let source = passage.source(direction).into_iter().enumerate();
@@ -361,31 +346,23 @@ impl Balance {
                         .sum()
                 };
                 let net = volume(direction) - volume(1 - direction);
-                self.mixing[room]
-                    .entering
-                    .add(net, passage.clear_area(problem));
+                let density = passage.streams[direction].total() / volume(direction);
+                entering.add(net, passage.clear_area(problem));
+                entering.differs(net, density - mean);
             }
         }
-        for room in 0..self.rooms {
-            let hull = &problem.building.rooms[room];
-            let [low, up] = [2 * room + LOWER, 2 * room + UPPER].map(|k| &problem.layers.layers[k]);
-            let entering = &self.mixing[room].entering;
-            let through = entering.flow();
-            if through <= 0.0 {
-                continue;
-            }
-            let section = hull.width.min(hull.length) * hull.height;
-            let speed = mixing::stirring_speed(through, section, entering.speed_squared());
-            let richardson = mixing::richardson(low.density, up.density, hull.height, speed);
-            let share = problem.choices.mixing_factor.min(1.0) * mixing::mixed_share(richardson);
-            let exchange = low.available
-                * up.available
-                * mixing::exchange_rate(low.volume.min(up.volume), share, hull.volume / through);
-            self.mixing[room].share = share;
-            self.mixing[room].exchange = exchange;
-            let [lifted, sunk] = self.internal[room];
-            self.residual[room] += exchange * (low.density * lifted + up.density * sunk);
+        let hull = &problem.building.rooms[room];
+        let through = entering.flow();
+        if through <= 0.0 {
+            return (0.0, 0.0);
         }
+        let section = hull.width.min(hull.length) * hull.height;
+        let speed = mixing::stirring_speed(through, section, entering.speed_squared());
+        let difference = (low.density - up.density).max(0.0).max(entering.contrast());
+        let lighter = mean - 0.5 * difference;
+        let richardson = mixing::richardson(mean + 0.5 * difference, lighter, hull.height, speed);
+        let share = problem.choices.mixing_factor.min(1.0) * mixing::mixed_share(richardson);
+        (share, through / hull.volume)
     }
 
     /// Compression of tight groups and the condition that ties their
