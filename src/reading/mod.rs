@@ -19,11 +19,12 @@ mod stations;
 mod summary;
 mod ways;
 
+pub use fire::BackBy;
 pub use flashover::{Answer, Flashover};
 pub use moment::{Band, Kind, Moment, Number, Since, Weight, spoken};
 pub use summary::{
-    Closures, Comeback, Extreme, FirstOpening, LimitSummary, RoomSummary, StationSummary, Stretch,
-    Summary, Worst,
+    Closures, Comeback, Extreme, FirstOpening, LimitSummary, Narrowed, RoomSummary, StationSummary,
+    Stretch, Summary, Worst,
 };
 pub use ways::FlowSummary;
 

@@ -2,7 +2,7 @@
 
 use serde::Serialize;
 
-use super::fire::{self, SHORT_OF_AIR};
+use super::fire::{self, BackBy, SHORT_OF_AIR};
 use super::flashover::{self, Flashover};
 use super::history::Side;
 use super::moment::{Band, Kind};
@@ -111,18 +111,43 @@ pub struct FirstOpening {
 }
 
 /// What the fire does after the first opening.
-#[derive(Debug, Clone, Copy, PartialEq, Serialize)]
+#[derive(Debug, Clone, PartialEq, Serialize)]
 #[serde(rename_all = "snake_case")]
 pub enum Comeback {
-    /// It was short of air and comes back above three times its starved level.
+    /// It was short of air and comes back: above three times its starved
+    /// level, above its earlier peak, or with a room near flashover again.
     At {
         /// When, s.
         time: f64,
+        /// By what.
+        by: BackBy,
         /// Earliest and latest to expect.
         band: Option<Band>,
     },
+    /// It was short of air and grows after the opening, but not as far as that.
+    Grew {
+        /// Heat release at the opening, W.
+        from: f64,
+        /// Highest heat release after it, W.
+        to: Extreme,
+        /// Its starved level, W.
+        level: f64,
+        /// The first opening that was made narrower on the way.
+        narrowed: Option<Narrowed>,
+    },
     /// It was short of air and does not come back within the run.
     NotInTheModel,
+}
+
+/// An opening that was shut or made narrower.
+#[derive(Debug, Clone, PartialEq, Serialize)]
+pub struct Narrowed {
+    /// Name of the opening.
+    pub opening: String,
+    /// True when nothing stays open.
+    pub shut: bool,
+    /// When, s.
+    pub time: f64,
 }
 
 /// Relative closures of the ledger.
@@ -195,7 +220,7 @@ pub(super) fn read(reader: &Reader<'_>) -> Summary {
         lowest_before: opened
             .zip(peak_before)
             .and_then(|(opened, peak)| extreme(burned.smallest(peak.time, opened))),
-        comeback: opened.and_then(|opened| comeback(reader, opened)),
+        comeback: opened.and_then(|opened| fire::comeback(reader, opened)),
         peak_after,
         air_could_burn_at_peak: peak_after
             .map(|peak| air.at(peak.time))
@@ -237,17 +262,6 @@ fn first_opening(reader: &Reader<'_>) -> Option<FirstOpening> {
             action: played.name.to_owned(),
             time: played.time,
         })
-}
-
-/// Whether a fire that was short of air at the first opening comes back after
-/// that one or a later one.
-fn comeback(reader: &Reader<'_>, opened: f64) -> Option<Comeback> {
-    fire::starved_level(reader, opened)?;
-    let back = fire::back_up(reader).into_iter().next();
-    Some(back.map_or(Comeback::NotInTheModel, |moment| Comeback::At {
-        time: moment.time,
-        band: moment.band,
-    }))
 }
 
 fn lowest_base_oxygen(reader: &Reader<'_>) -> Option<Extreme> {

@@ -1,7 +1,7 @@
 //! The summary in words.
 
 use super::lines::{Page, glued};
-use super::values::{clock, metric, since};
+use super::values::{clock, metric};
 use crate::reading::{
     Answer, Band, Comeback, Extreme, Flashover, FlowSummary, LimitSummary, RoomSummary,
     StationSummary, Stretch, Summary, spoken,
@@ -56,21 +56,16 @@ fn at(extreme: Extreme, dimension: Dimension) -> String {
 /// Value and time of an extreme, with the time since the first opening.
 fn at_since(summary: &Summary, extreme: Extreme, dimension: Dimension) -> String {
     let text = at(extreme, dimension);
-    match &summary.first_opening {
-        Some(first) if extreme.time >= first.time => {
-            format!("{text} ({})", since(extreme.time - first.time))
-        }
-        _ => text,
+    match after(summary, extreme.time) {
+        after if after.is_empty() => text,
+        after => format!("{text} ({after})"),
     }
 }
 
 fn fire(page: &mut Page, summary: &Summary) {
     if let Some(first) = &summary.first_opening {
         let text = format!("{}, at {}", spoken(&first.action), clock(first.time));
-        page.entry(
-            "first opening",
-            &format!("{text}; times with + count from it"),
-        );
+        page.entry("first opening", &text);
     }
     if let Some(peak) = summary.peak_before {
         let mut text = at(peak, Dimension::Power);
@@ -80,17 +75,17 @@ fn fire(page: &mut Page, summary: &Summary) {
         if let Some(lowest) = summary.lowest_before {
             text = format!("{text}, then down to {}", at(lowest, Dimension::Power));
         }
-        page.entry("heat burned", &text);
+        page.entry("heat release", &text);
     }
     if let Some(peak) = summary.peak_after {
-        let mut text = format!("{} after it", at_since(summary, peak, Dimension::Power));
+        let mut text = at_since(summary, peak, Dimension::Power);
         if let Some(air) = summary.air_could_burn_at_peak {
             let air = value(air, Dimension::Power);
             text = format!("{text}; the incoming air could then burn {air}");
         }
         page.entry("", &text);
     }
-    if let Some(comeback) = summary.comeback {
+    if let Some(comeback) = &summary.comeback {
         page.entry("", &comeback_words(summary, comeback));
     }
     let text = if summary.short_of_air.is_empty() {
@@ -146,29 +141,62 @@ fn flow_words(flow: &FlowSummary) -> String {
 }
 
 /// Whether and when the fire comes back.
-fn comeback_words(summary: &Summary, comeback: Comeback) -> String {
-    let Comeback::At { time, band } = comeback else {
-        return "does not come back within the run, in the model".to_owned();
-    };
+fn comeback_words(summary: &Summary, comeback: &Comeback) -> String {
+    match comeback {
+        Comeback::At { time, by, band } => {
+            let text = format!("{} at {}", by.words(), clock(*time));
+            let mut beside = vec![after(summary, *time)];
+            beside.extend(band.map(|band| band_words(summary, band)));
+            beside.retain(|words| !words.is_empty());
+            if beside.is_empty() {
+                text
+            } else {
+                format!("{text} ({})", beside.join("; "))
+            }
+        }
+        Comeback::Grew {
+            from,
+            to,
+            level,
+            narrowed,
+        } => {
+            let mut text = format!(
+                "grew from {} to {}, below three times its starved level of {}",
+                value(*from, Dimension::Power),
+                at(*to, Dimension::Power),
+                value(*level, Dimension::Power),
+            );
+            if let Some(narrowed) = narrowed {
+                let done = if narrowed.shut { "shut" } else { "narrowed" };
+                let name = spoken(&narrowed.opening);
+                text = format!("{text}; {name} {done} at {}", clock(narrowed.time));
+            }
+            text
+        }
+        Comeback::NotInTheModel => "does not come back within the run, in the model".to_owned(),
+    }
+}
+
+/// A band on the clock of the first opening.
+fn band_words(summary: &Summary, band: Band) -> String {
     let opened = summary
         .first_opening
         .as_ref()
         .map_or(0.0, |first| first.time);
-    let text = format!(
-        "back above three times its starved level at {}",
-        since(time - opened)
-    );
-    match band {
-        Some(band) => format!("{text} ({})", band_words(band, opened)),
-        None => text,
-    }
+    let earliest = clock(band.earliest - opened);
+    let latest = clock(band.latest - opened);
+    glued(&format!("band {earliest} to {latest} after it"))
 }
 
-/// A band on the clock of the opening.
-fn band_words(band: Band, opened: f64) -> String {
-    let earliest = since(band.earliest - opened);
-    let latest = since(band.latest - opened);
-    glued(&format!("band {earliest} to {latest}"))
+/// Time after the first opening in words; none before it.
+fn after(summary: &Summary, time: f64) -> String {
+    match &summary.first_opening {
+        Some(first) if time >= first.time => {
+            let delay = clock(time - first.time);
+            format!("{delay} after {}", spoken(&first.action))
+        }
+        _ => String::new(),
+    }
 }
 
 fn room_words(summary: &Summary, room: &RoomSummary) -> Option<String> {
@@ -266,8 +294,9 @@ fn limit_words(summary: &Summary, limit: &LimitSummary) -> String {
         match limit.first_after_opening {
             Some(after) if after > opening.time => {
                 text = format!(
-                    "{text}, after the opening at {}",
-                    since(after - opening.time)
+                    "{text}; again {} after {}",
+                    clock(after - opening.time),
+                    spoken(&opening.action)
                 );
             }
             Some(_) => text.push_str(", still so at the opening"),
