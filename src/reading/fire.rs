@@ -76,10 +76,11 @@ fn ignitions(reader: &Reader<'_>) -> Vec<Moment> {
 
 fn short_of_air(reader: &Reader<'_>) -> Vec<Moment> {
     reader
-        .by_stage(reader.burned_over_free(), Side::Below, SHORT_OF_AIR)
+        .by_stage(reader.air_ratio(), Side::Below, SHORT_OF_AIR)
         .into_iter()
         .map(|spell| {
             let text = "fire short of air: burns less than half of what it would in the open";
+            let back = spell.end.and_then(|end| reader.back_at(end, SHORT_OF_AIR));
             reader
                 .moment(
                     spell.start,
@@ -94,6 +95,11 @@ fn short_of_air(reader: &Reader<'_>) -> Vec<Moment> {
                 )
                 .with("free rate", reader.free().at(spell.start), Dimension::Power)
                 .with_spell(spell)
+                .with(
+                    "at half of the free rate again",
+                    back.unwrap_or(f64::NAN),
+                    Dimension::Time,
+                )
                 .weighing(Weight::Headline)
         })
         .collect()

@@ -37,7 +37,7 @@ kinds! {
     Ignition, "ignition", "An item is lit.";
     Action, "action", "The crew or somebody moves an opening or switches a fan, or glass or a door gives way.";
     SmokeAtDoorHead, "smoke_at_door_head", "The smoke level of a room comes down to its highest door or window head for the first time.";
-    ShortOfAir, "short_of_air", "The heat release is below half of the free rate.";
+    ShortOfAir, "short_of_air", "The heat release is below half of the free rate, and the incoming air could not burn all of that.";
     FlamesOut, "flames_out", "The heat release is below 5 % of the free rate.";
     Peak, "peak", "The heat release is at its highest between two actions.";
     AirEarliest, "air_earliest", "The front of the cold air that an opening lets in reaches the seat of the fire at the earliest, by the speed of a gravity current.";

@@ -35,6 +35,21 @@ pub struct Stretch {
     pub to: Option<f64>,
 }
 
+/// A stretch of time short of air.
+#[derive(Debug, Clone, Copy, PartialEq, Serialize)]
+pub struct ShortOfAir {
+    /// From, s.
+    pub from: f64,
+    /// To, s; `None` when it lasts to the end of the record.
+    pub to: Option<f64>,
+    /// True when it ends because the incoming air could burn more than the
+    /// free rate, with the fire still below half of that.
+    pub has_air_again: bool,
+    /// When the fire is then back at half of its free rate, s; `None` when it
+    /// is so at once or not within the record.
+    pub half_again: Option<f64>,
+}
+
 /// A room in a few numbers.
 #[derive(Debug, Clone, PartialEq, Serialize)]
 pub struct RoomSummary {
@@ -182,12 +197,13 @@ pub struct Summary {
     pub comeback: Option<Comeback>,
     /// Highest heat burned from the first opening on, W.
     pub peak_after: Option<Extreme>,
-    /// What the incoming air could burn when it burned most after the opening, W.
+    /// The most that the incoming air could burn in the 30 s before it burned
+    /// most after the opening, W; `None` when an opening was narrowed in them.
     pub air_could_burn_at_peak: Option<f64>,
     /// Lowest oxygen at the base of the main item's flame, wet volume fraction.
     pub lowest_base_oxygen: Option<Extreme>,
     /// When the fire was short of air.
-    pub short_of_air: Vec<Stretch>,
+    pub short_of_air: Vec<ShortOfAir>,
     /// Highest size of the pressure in any room, Pa.
     pub highest_pressure: Option<Extreme>,
     /// Rooms, in the order of the scenario.
@@ -200,6 +216,39 @@ pub struct Summary {
     pub closures: Closures,
     /// Number of things that a user should know about the run.
     pub flags: usize,
+    /// What should be known with every reading of this run, in words.
+    pub notes: Vec<&'static str>,
+}
+
+/// How long before its peak a fire may have breathed what it burns then, s
+/// \[choice\].
+const BREATHED: f64 = 30.0;
+
+/// Said of carbon monoxide when the fire was short of air (`docs/method.md`,
+/// 24).
+const CARBON_MONOXIDE: &str = "CO is reckoned with the yield of a fire with plenty of air; \
+    short of air it can be ten times higher. Read every CO as \"at least\".";
+
+/// What holds for all readings of this run.
+fn notes(reader: &Reader<'_>) -> Vec<&'static str> {
+    if short_of_air(reader).is_empty() {
+        Vec::new()
+    } else {
+        vec![CARBON_MONOXIDE]
+    }
+}
+
+/// The most that the incoming air could burn shortly before the peak, W.
+fn air_at_peak(reader: &Reader<'_>, peak: f64, opened: f64) -> Option<f64> {
+    let from = (peak - BREATHED).max(opened);
+    let narrowed = |played: &super::played::Played<'_>| {
+        played.narrows() && played.time >= from && played.time <= peak
+    };
+    if reader.played.iter().any(narrowed) {
+        return None;
+    }
+    let air = reader.history(Subject::House, Quantity::AirCouldBurn);
+    air.largest(from, peak).map(|(_, value)| value)
 }
 
 /// Reads the summary.
@@ -210,7 +259,6 @@ pub(super) fn read(reader: &Reader<'_>) -> Summary {
     let burned = reader.burned();
     let peak_before = extreme(burned.largest(0.0, before_end));
     let peak_after = opened.and_then(|opened| extreme(burned.largest(opened, reader.end)));
-    let air = reader.history(Subject::House, Quantity::AirCouldBurn);
     let ledger = &reader.record.ledger;
     let relative = |closure: &Closure| closure.relative;
     Summary {
@@ -223,8 +271,9 @@ pub(super) fn read(reader: &Reader<'_>) -> Summary {
         comeback: opened.and_then(|opened| fire::comeback(reader, opened)),
         peak_after,
         air_could_burn_at_peak: peak_after
-            .map(|peak| air.at(peak.time))
-            .filter(|value| value.is_finite()),
+            .zip(opened)
+            .and_then(|(peak, opened)| air_at_peak(reader, peak.time, opened)),
+        notes: notes(reader),
         lowest_base_oxygen: lowest_base_oxygen(reader),
         short_of_air: short_of_air(reader),
         highest_pressure: highest_pressure(reader),
@@ -270,14 +319,21 @@ fn lowest_base_oxygen(reader: &Reader<'_>) -> Option<Extreme> {
     extreme(base.smallest(0.0, reader.end))
 }
 
-fn short_of_air(reader: &Reader<'_>) -> Vec<Stretch> {
+fn short_of_air(reader: &Reader<'_>) -> Vec<ShortOfAir> {
     reader
-        .burned_over_free()
+        .air_ratio()
         .spells(Side::Below, SHORT_OF_AIR)
         .into_iter()
-        .map(|spell| Stretch {
+        .map(|spell| ShortOfAir {
             from: spell.start,
             to: spell.end,
+            has_air_again: spell
+                .end
+                .is_some_and(|end| reader.back_at(end, SHORT_OF_AIR).is_some()),
+            half_again: spell
+                .end
+                .and_then(|end| reader.back_at(end, SHORT_OF_AIR))
+                .filter(|time| time.is_finite()),
         })
         .collect()
 }

@@ -3,10 +3,10 @@
 use super::lines::{Page, glued};
 use super::values::{clock, metric};
 use crate::reading::{
-    Answer, Band, Comeback, Extreme, Flashover, FlowSummary, LimitSummary, RoomSummary,
+    Answer, Band, Comeback, Extreme, Flashover, FlowSummary, LimitSummary, RoomSummary, ShortOfAir,
     StationSummary, Stretch, Summary, spoken,
 };
-use crate::record::{Dimension, Ended};
+use crate::record::{Dimension, Ended, Quantity};
 
 /// A value that stays on one line.
 fn value(value: f64, dimension: Dimension) -> String {
@@ -42,6 +42,12 @@ pub(super) fn write(page: &mut Page, summary: &Summary) {
     }
     page.entry("run", &ended(summary));
     closures(page, summary);
+    if !summary.notes.is_empty() {
+        page.gap();
+    }
+    for note in &summary.notes {
+        page.paragraph(note);
+    }
 }
 
 /// Value and time of an extreme.
@@ -81,7 +87,9 @@ fn fire(page: &mut Page, summary: &Summary) {
         let mut text = at_since(summary, peak, Dimension::Power);
         if let Some(air) = summary.air_could_burn_at_peak {
             let air = value(air, Dimension::Power);
-            text = format!("{text}; the incoming air could then burn {air}");
+            text = format!(
+                "{text}; the incoming air could burn up to {air} in the half minute before"
+            );
         }
         page.entry("", &text);
     }
@@ -91,7 +99,7 @@ fn fire(page: &mut Page, summary: &Summary) {
     let text = if summary.short_of_air.is_empty() {
         "never in the model".to_owned()
     } else {
-        stretches(&summary.short_of_air)
+        shortages(&summary.short_of_air)
     };
     page.entry("short of air", &text);
     if let Some(lowest) = summary.lowest_base_oxygen {
@@ -101,6 +109,28 @@ fn fire(page: &mut Page, summary: &Summary) {
         );
         page.entry("oxygen at the flame", &text);
     }
+}
+
+/// Times short of air in words, with what ends them.
+fn shortages(all: &[ShortOfAir]) -> String {
+    let words = |short: &ShortOfAir| {
+        let stretch = Stretch {
+            from: short.from,
+            to: short.to,
+        };
+        let text = stretches(&[stretch]);
+        match (short.has_air_again, short.half_again) {
+            (false, _) => text,
+            (true, Some(half)) => format!(
+                "{text}, when it has air again; half of its free rate again at {}",
+                clock(half)
+            ),
+            (true, None) => {
+                format!("{text}, when it has air again; not yet back to half of its free rate")
+            }
+        }
+    };
+    all.iter().map(words).collect::<Vec<_>>().join(", ")
 }
 
 /// Stretches of time in words.
@@ -275,7 +305,13 @@ fn station_words(page: &mut Page, summary: &Summary, station: &StationSummary) {
         .iter()
         .map(|worst| {
             let text = at_since(summary, worst.extreme, worst.quantity.dimension());
-            format!("{} {text}", worst.quantity.label())
+            let label = match worst.quantity {
+                Quantity::StationCarbonMonoxide if !summary.short_of_air.is_empty() => {
+                    "CO at least"
+                }
+                quantity => quantity.label(),
+            };
+            format!("{label} {text}")
         })
         .collect();
     if !worst.is_empty() {
@@ -324,12 +360,25 @@ fn ended(summary: &Summary) -> String {
     }
 }
 
-/// Closure of the ledger in one entry.
+/// Largest relative closure that counts as closed: of energy, which is
+/// relative to the heat released, and of atoms and mass.
+const ENERGY_CLOSED: f64 = 1e-3;
+const ATOMS_CLOSED: f64 = 1e-6;
+
+/// Whether the books close; the numbers stand in the details.
 fn closures(page: &mut Page, summary: &Summary) {
     let closures = &summary.closures;
-    let text = format!(
-        "closes to {:.0e} in mass, {:.0e} in energy, {:.0e} in oxygen, {:.0e} in carbon",
-        closures.mass, closures.energy, closures.oxygen, closures.carbon,
+    let closed = closures.energy.abs() <= ENERGY_CLOSED
+        && [closures.mass, closures.oxygen, closures.carbon]
+            .iter()
+            .all(|closure| closure.abs() <= ATOMS_CLOSED);
+    let text = if closed {
+        "closed"
+    } else {
+        "NOT closed, do not use this run; --details gives the numbers"
+    };
+    page.entry(
+        "balance",
+        &format!("mass, energy, oxygen and carbon: {text}"),
     );
-    page.entry("ledger", &text);
 }
