@@ -37,6 +37,7 @@ kinds! {
     Ignition, "ignition", "An item is lit.";
     Action, "action", "The crew or somebody moves an opening or switches a fan, or glass or a door gives way.";
     SmokeAtDoorHead, "smoke_at_door_head", "The smoke level of a room comes down to its highest door or window head for the first time.";
+    SmokeToFloor, "smoke_to_floor", "The lower layer of a room is itself smoky: its soot above 30 % of the upper layer's, or the visibility in it below 2 m.";
     ShortOfAir, "short_of_air", "The heat release is below half of the free rate, and the incoming air could not burn all of that.";
     FlamesOut, "flames_out", "The heat release is below 5 % of the free rate.";
     Peak, "peak", "The heat release is at its highest between two actions.";

@@ -7,6 +7,7 @@ use super::flashover::{self, Flashover};
 use super::history::Side;
 use super::moment::{Band, Kind};
 use super::reader::Reader;
+use super::rooms;
 use super::stations;
 use super::ways::{self, FlowSummary};
 use crate::record::{Closure, Dimension, Ended, Quantity, Subject};
@@ -62,6 +63,8 @@ pub struct RoomSummary {
     pub hottest_layer: Option<Extreme>,
     /// Lowest smoke level, m above the floor.
     pub lowest_smoke_level: Option<Extreme>,
+    /// When the smoke reached to the floor: the lower layer smoky itself.
+    pub smoke_to_floor: Vec<Stretch>,
     /// When momentum mixed it.
     pub mixed: Vec<Stretch>,
     /// Flashover before the first opening, or over the whole run without one.
@@ -373,6 +376,7 @@ fn room_summary(reader: &Reader<'_>, room: usize, opened: Option<f64>) -> RoomSu
             .map_or_else(String::new, |r| r.name.clone()),
         hottest_layer: extreme(hottest),
         lowest_smoke_level: extreme(lowest),
+        smoke_to_floor: rooms::smoke_to_floor_stretches(reader, room),
         mixed: ways::mixed_stretches(reader, room),
         flashover_before: flashover::read(reader, room, 0.0, opened.unwrap_or(reader.end)),
         flashover_after: opened

@@ -171,7 +171,7 @@ fn short_of_air(out: &mut String, plan: &Plan, item: &Item) {
     ) {
         line!(
             out,
-            "    by hand short of air about {early:.0} to {late:.0} s after it is lit\n    (15 to 13 % oxygen with all of that air mixed; a single room runs short sooner)"
+            "    short of air by hand calculation about {early:.0} to {late:.0} s after it is lit\n    (15 to 13 % oxygen with all of that air mixed; a single room runs short sooner)"
         );
     }
 }
@@ -194,7 +194,7 @@ fn flashover(out: &mut String, plan: &Plan, id: RoomId) {
     if factor <= 0.0 {
         line!(
             out,
-            "    flashover by hand: not asked, every door and window of {} is shut at ignition",
+            "    flashover by hand calculation: not asked, every door and window of {} is shut at ignition",
             room.name
         );
         return;
@@ -204,7 +204,7 @@ fn flashover(out: &mut String, plan: &Plan, id: RoomId) {
         .map(|conductance| hand::flashover_mqh(factor, surface, conductance));
     line!(
         out,
-        "    flashover of {} by hand, +/- 30 %, openings as at ignition ({:.2} MW of air):\n      Thomas {:.2} MW, Babrauskas {:.2} MW{}",
+        "    flashover of {} by hand calculation, +/- 30 %, openings as at ignition ({:.2} MW of air):\n      Thomas {:.2} MW, Babrauskas {:.2} MW{}",
         room.name,
         hand::air_limit(factor) / 1e6,
         hand::flashover_thomas(factor, surface) / 1e6,

@@ -52,7 +52,7 @@ fn done(plan: &Plan, effect: Effect, what: &str, because: Option<&str>) -> Strin
             }
             let factor = hand::opening_factor(width, opening.head - opening.sill);
             format!(
-                "{} {what}{because}; {width:.2} m clear, {:.2} MW by hand",
+                "{} {what}{because}; {width:.2} m clear, {:.2} MW by hand calculation",
                 opening.name,
                 hand::air_limit(factor) / 1e6
             )

@@ -239,6 +239,10 @@ fn room_words(summary: &Summary, room: &RoomSummary) -> Option<String> {
         let text = at_since(summary, lowest, Dimension::Length);
         parts.push(format!("smoke down to {text}"));
     }
+    if !room.smoke_to_floor.is_empty() {
+        let when = stretches(&room.smoke_to_floor);
+        parts.push(format!("smoke to the floor {when}"));
+    }
     if !room.mixed.is_empty() {
         parts.push(format!("mixed by momentum {}", stretches(&room.mixed)));
     }
@@ -277,7 +281,7 @@ fn flashover_words(summary: &Summary, room: &RoomSummary) -> Option<String> {
         .into_iter()
         .map(|(reading, when)| {
             format!(
-                "flashover{when}: {} (layer {}: {}, floor {}: {})",
+                "flashover{when}: {} (layer {} against 600 °C: {}, floor {} against 20 kW/m2: {})",
                 reading.word.word(),
                 glued(&metric(reading.hottest_layer, Dimension::Temperature)),
                 reading.by_layer.word(),
@@ -296,7 +300,7 @@ fn station_words(page: &mut Page, summary: &Summary, station: &StationSummary) {
         station.posture,
         value(station.height, Dimension::Length),
     );
-    page.entry(&format!("station {}", spoken(&station.name)), &place);
+    page.entry(&format!("place of {}", spoken(&station.name)), &place);
     for limit in &station.limits {
         page.entry("", &limit_words(summary, limit));
     }
