@@ -28,6 +28,40 @@ fn cli_bad_file_tells_all_faults_and_writes_nothing() {
     }
 }
 
+/// A models file lies beside the scenario; its faults name it, and it is part
+/// of what a run came from.
+#[test]
+fn cli_own_models_lie_beside_the_scenario() {
+    let place = Place::new();
+    let scenario = SCENARIO
+        .replacen("duration", "models = \"own.toml\"\nduration", 1)
+        .replace("\"polyurethane mattress with bedding\"", "\"moonstone\"");
+    place.write("own_models.toml", &scenario);
+    let check = || place.run(&["check", "own_models.toml", "--format", "json"]);
+    let json = |output: &std::process::Output| -> serde_json::Value {
+        serde_json::from_slice(&output.stdout).unwrap()
+    };
+    let output = check();
+    assert_eq!(output.status.code(), Some(2));
+    assert!(side(&output).contains("own.toml"), "{}", side(&output));
+    let fuel = "[[fuel]]\nname = \"moonstone\"\nlike = \"wood\"\n";
+    place.write("own.toml", fuel);
+    let output = check();
+    assert_eq!(output.status.code(), Some(2));
+    assert_eq!(json(&output)["faults"][0]["file"], "own.toml");
+    place.write("own.toml", &format!("{fuel}source = \"invented\"\n"));
+    let first = check();
+    assert_eq!(first.status.code(), Some(0), "{}", side(&first));
+    let soot = format!("{fuel}source = \"invented\"\nsoot_yield = 0.02\n");
+    place.write("own.toml", &soot);
+    let second = check();
+    assert_eq!(json(&second)["plan"]["fuels"][0]["soot_yield"], 0.02);
+    assert_ne!(
+        json(&first)["scenario_hash"],
+        json(&second)["scenario_hash"]
+    );
+}
+
 #[test]
 fn cli_faults_as_json() {
     let place = Place::new();

@@ -1,6 +1,7 @@
 //! The one table of scenario keys. A key is defined here and nowhere else;
 //! the reader, the messages, near names and `docs/scenario.md` come from it.
 
+mod actions;
 mod air;
 mod contents;
 mod house;
@@ -292,8 +293,9 @@ const fn table(
     }
 }
 
+pub(super) use actions::{ACTION, TACTIC, TACTIC_ACTION};
 pub(super) use air::{FACADE, FAILS, FALLS_OUT, FAN, GLASS, WIND};
-pub(super) use contents::{ACTION, FUEL, ITEM, LIMITS, STATION, TACTIC, TACTIC_ACTION};
+pub(super) use contents::{FUEL, ITEM, LIMITS, STATION};
 pub(super) use house::{
     COURSE, INDOORS, LEAKAGE, LINING, OPEN_AIR, OPENING, ROOM, ROOT, SHARED_WALL,
 };

@@ -13,6 +13,7 @@ mod materials;
 mod openings;
 mod rooms;
 mod stations;
+mod tactics;
 mod wind;
 
 pub(super) use cautions::{energy, open_area, stands_open};
