@@ -90,7 +90,7 @@ impl<'a> Reader<'a> {
 
     /// When a fire that has air enough again at `time` is back at `share` of
     /// its free rate: `None` when it is so at once, not-a-number when it is
-    /// not within the run.
+    /// not within the run or short of air again before.
     pub fn back_at(&self, time: f64, share: f64) -> Option<f64> {
         /// Later than this it is not at once, s \[choice\].
         const AT_ONCE: f64 = 3.0;
@@ -99,6 +99,15 @@ impl<'a> Reader<'a> {
             .into_iter()
             .find(|spell| spell.start < time && spell.end.is_none_or(|end| end > time + AT_ONCE))
             .map(|spell| spell.end.unwrap_or(f64::NAN))
+            .map(|back| {
+                let short = self.air_ratio().spells(Side::Below, share);
+                let again = |start: f64| start > time && start < back;
+                if short.iter().any(|spell| again(spell.start)) {
+                    f64::NAN
+                } else {
+                    back
+                }
+            })
     }
 
     /// One history of the record.

@@ -29,7 +29,7 @@ const SMOKY_VISIBILITY: f64 = 2.0;
 
 /// Visibility in the upper layer above which a room has no smoke worth the
 /// name, m \[choice\].
-const CLEAR: f64 = 10.0;
+const CLEAR: f64 = 3.0;
 
 /// Largest visibility that is reckoned, m, as at the stations.
 const FAR: f64 = 30.0;

@@ -122,15 +122,15 @@ fn shortages(all: &[ShortOfAir]) -> String {
         match (short.has_air_again, short.half_again) {
             (false, _) => text,
             (true, Some(half)) => format!(
-                "{text}, when it has air again; half of its free rate again at {}",
+                "{text}, when it has air again, back to half of its free rate at {}",
                 clock(half)
             ),
             (true, None) => {
-                format!("{text}, when it has air again; not yet back to half of its free rate")
+                format!("{text}, when it has air again, not yet back to half of its free rate")
             }
         }
     };
-    all.iter().map(words).collect::<Vec<_>>().join(", ")
+    all.iter().map(words).collect::<Vec<_>>().join("; then ")
 }
 
 /// Stretches of time in words.
@@ -221,10 +221,10 @@ fn band_words(summary: &Summary, band: Band) -> String {
 /// Time after the first opening in words; none before it.
 fn after(summary: &Summary, time: f64) -> String {
     match &summary.first_opening {
-        Some(first) if time >= first.time => {
-            let delay = clock(time - first.time);
-            format!("{delay} after {}", spoken(&first.action))
-        }
+        Some(first) if time >= first.time => match clock(time - first.time) {
+            delay if delay == "0:00" => format!("at {}", spoken(&first.action)),
+            delay => format!("{delay} after {}", spoken(&first.action)),
+        },
         _ => String::new(),
     }
 }
@@ -250,11 +250,14 @@ fn room_words(summary: &Summary, room: &RoomSummary) -> Option<String> {
     (!parts.is_empty()).then(|| parts.join("; "))
 }
 
+/// Flashover with its criteria.
+const FLASHOVER: &str = "flashover (600\u{a0}°C, 20\u{a0}kW/m2)";
+
 /// Flashover before and after the first opening, with what each criterion
 /// says where it is not a plain no.
 fn flashover_words(summary: &Summary, room: &RoomSummary) -> Option<String> {
     let before = if summary.first_opening.is_some() {
-        " before the opening"
+        "before the opening "
     } else {
         ""
     };
@@ -265,7 +268,7 @@ fn flashover_words(summary: &Summary, room: &RoomSummary) -> Option<String> {
         .chain(
             room.flashover_after
                 .iter()
-                .map(|reading| (reading, " after the opening")),
+                .map(|reading| (reading, "after the opening ")),
         )
         .collect();
     if readings.is_empty() {
@@ -275,13 +278,13 @@ fn flashover_words(summary: &Summary, room: &RoomSummary) -> Option<String> {
         .iter()
         .all(|(reading, _)| reading.word == Answer::No)
     {
-        return Some("flashover: no".to_owned());
+        return Some(format!("{FLASHOVER}: no"));
     }
     let words: Vec<String> = readings
         .into_iter()
         .map(|(reading, when)| {
             format!(
-                "flashover{when}: {} (layer {} against 600 °C: {}, floor {} against 20 kW/m2: {})",
+                "{when}{} (layer {}: {}, floor {}: {})",
                 reading.word.word(),
                 glued(&metric(reading.hottest_layer, Dimension::Temperature)),
                 reading.by_layer.word(),
@@ -290,7 +293,7 @@ fn flashover_words(summary: &Summary, room: &RoomSummary) -> Option<String> {
             )
         })
         .collect();
-    Some(words.join("; "))
+    Some(format!("{FLASHOVER}: {}", words.join("; ")))
 }
 
 fn station_words(page: &mut Page, summary: &Summary, station: &StationSummary) {
@@ -310,7 +313,9 @@ fn station_words(page: &mut Page, summary: &Summary, station: &StationSummary) {
         .map(|worst| {
             let text = at_since(summary, worst.extreme, worst.quantity.dimension());
             let label = match worst.quantity {
-                Quantity::StationCarbonMonoxide if !summary.short_of_air.is_empty() => {
+                Quantity::StationCarbonMonoxide
+                    if !summary.short_of_air.is_empty() && worst.extreme.value > LEAST_TOLD =>
+                {
                     "CO at least"
                 }
                 quantity => quantity.label(),
@@ -322,6 +327,9 @@ fn station_words(page: &mut Page, summary: &Summary, station: &StationSummary) {
         page.entry("", &format!("worst: {}", worst.join("; ")));
     }
 }
+
+/// Volume fractions that round to nothing are no lower bound worth a word.
+const LEAST_TOLD: f64 = 5e-5;
 
 /// One limit: when it is reached, or that it is not.
 fn limit_words(summary: &Summary, limit: &LimitSummary) -> String {
