@@ -17,7 +17,7 @@ pub fn picture(record: &Record, plan: &Plan) -> Picture {
         record,
         plan,
         "oxygen_and_fuel".to_owned(),
-        "Oxygen and unburned fuel".to_owned(),
+        "Oxygen and unburned fuel",
     );
     let mut rooms = shown_rooms(record, plan);
     rooms.truncate(MOST_ROOMS);

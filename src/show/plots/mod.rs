@@ -63,14 +63,14 @@ fn free_name(taken: &[(String, Vec<u8>)], wanted: &str) -> String {
 }
 
 /// A picture with everything but its panels.
-fn blank(record: &Record, plan: &Plan, file: String, title: String) -> Picture {
+fn blank(record: &Record, plan: &Plan, file: String, title: &str) -> Picture {
     let end = record.time.last().copied().unwrap_or(plan.end);
     let tactic = plan.tactic.as_ref().map_or_else(String::new, |tactic| {
         format!(" · tactic: {}", spoken(tactic))
     });
     Picture {
         file,
-        title: spoken(&title),
+        title: spoken(title),
         subtitle: format!("{}{tactic}", plan.title),
         end: if end > 0.0 { end } else { plan.end },
         marks: marks(plan, end),

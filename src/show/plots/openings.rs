@@ -24,7 +24,7 @@ fn picture(record: &Record, plan: &Plan, index: usize) -> Picture {
         record,
         plan,
         format!("opening_{}", opening.name),
-        format!("Flow through {}", opening.name),
+        &format!("Flow through {}", opening.name),
     );
     let (from, to) = (space_name(plan, opening.from), space_name(plan, opening.to));
     picture.panels = vec![

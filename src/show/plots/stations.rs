@@ -25,7 +25,7 @@ fn picture(record: &Record, plan: &Plan, index: usize) -> Picture {
         record,
         plan,
         format!("station_{}", station.name),
-        format!(
+        &format!(
             "Conditions at {}: {}, head at {:.1} m, {}",
             station.name, station.posture, station.height, plan.rooms[station.room.0].name
         ),

@@ -18,7 +18,7 @@ pub fn picture(record: &Record, plan: &Plan) -> Picture {
         record,
         plan,
         "temperatures".to_owned(),
-        "Layer temperatures and smoke level".to_owned(),
+        "Layer temperatures and smoke level",
     );
     let rooms = shown_rooms(record, plan);
     picture.panels = vec![
