@@ -2,6 +2,8 @@
 //! come to its end and keep its books, whatever is opened, shut, sealed or set
 //! on fire. Names must not matter at all and order must not matter beyond the
 //! tolerance.
+// Tables for `--nocapture`.
+#![allow(clippy::print_stdout)]
 
 mod common;
 
@@ -22,7 +24,7 @@ const MOST_EVALUATIONS: u64 = 30_000;
 const EVERY: f64 = 2.0;
 
 fn run(plan: &Plan) -> Record {
-    solve::run(plan, EVERY, &mut |_| false).unwrap()
+    solve::run(plan, EVERY, &mut |_| false).expect("a plan that can be solved")
 }
 
 /// Faults of a run in words, with its work.
@@ -67,7 +69,7 @@ fn conserve_the_draw_has_what_it_should() {
     let shared = share(&|p| !p.shared_walls.is_empty());
     let moved = share(&|p| p.actions.len() > 3);
     let repeated = share(&|p| {
-        let o = |n: usize| p.actions[n].opening;
+        let o = |n: usize| p.actions[n].effect.opening();
         (1..p.actions.len()).any(|n| (0..n).any(|m| o(m) == o(n)))
     });
     let mixed = share(&|p| p.fuels.len() == 3);
@@ -96,7 +98,12 @@ fn conserve_renaming_changes_nothing() {
         let plan = generated::plan(seed);
         let mut renamed = plan.clone();
         // In the reverse of their alphabet, so that sorting would show.
-        let name = |n: usize, what: &str| format!("{} {what}", char::from(b'z' - n as u8));
+        let name = |n: usize, what: &str| {
+            format!(
+                "{} {what}",
+                char::from(b'z' - u8::try_from(n).unwrap_or(25))
+            )
+        };
         for (n, room) in renamed.rooms.iter_mut().enumerate() {
             room.name = name(n, "room");
         }

@@ -199,6 +199,22 @@ impl<'a> Model<'a> {
         lost
     }
 
+    /// Heat that leaves at a moment with leaves that jump open, J; negative when
+    /// they jump shut.
+    pub fn heat_of_jumps(&self, time: f64, y: &[f64]) -> f64 {
+        let mut lost = 0.0;
+        for leaf in &self.building.leaves {
+            let (o, width) = (leaf.opening, self.plan.openings[leaf.opening].width);
+            let open = |clear: f64| (clear / width).clamp(0.0, 1.0);
+            let jump = open(self.schedule.clear_width(o, time))
+                - open(self.schedule.clear_width_before(o, time));
+            if jump != 0.0 {
+                lost += leaf.area * jump * self.building.stored(leaf.slab, y);
+            }
+        }
+        lost
+    }
+
     fn read_pressures(&mut self, y: &[f64]) {
         self.mean_pressure.fill(0.0);
         self.group_pressure.clear();

@@ -72,9 +72,7 @@ impl<'a, 'w> Driver<'a, 'w> {
     /// there is a way through.
     fn difference(&self, opening: usize, pressure: impl Fn(usize) -> f64) -> Option<f64> {
         let passage = &self.model.balance.passages[opening];
-        let [first, second] = passage
-            .rooms()
-            .map(|room| room.map_or(0.0, |r| pressure(r)));
+        let [first, second] = passage.rooms().map(|room| room.map_or(0.0, &pressure));
         (passage.stand.coefficient_width > 0.0).then_some(first - second)
     }
 

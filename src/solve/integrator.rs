@@ -153,7 +153,11 @@ impl<E: Equations> System<f64, DVector<f64>> for Adapter<'_, '_, E> {
             // Never twice the same: equal slopes in all stages of a step would
             // cancel in its error estimate.
             inner.refusals = inner.refusals.wrapping_add(1);
-            let sign = if inner.refusals % 2 == 0 { 1.0 } else { -1.0 };
+            let sign = if inner.refusals.is_multiple_of(2) {
+                1.0
+            } else {
+                -1.0
+            };
             rates.fill(sign * REFUSED_SLOPE * f64::from(1 + inner.refusals % 5));
             return;
         }

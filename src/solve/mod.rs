@@ -2,6 +2,8 @@
 //! integration, ledger. Knows the plan and the physics, fills the record,
 //! knows no files.
 
+#[cfg(test)]
+mod allocation_test;
 mod building;
 mod burning;
 mod changes;

@@ -262,7 +262,7 @@ impl Passage {
         let second = self.side(problem, 1, trial, wind);
         self.bands = match self.way {
             Way::Opening(o) if problem.openings[o].kind.is_horizontal() => {
-                self.lying(&problem.openings[o], &first, &second)
+                self.lying(problem, &problem.openings[o], &first, &second)
             }
             Way::Opening(o) => bands_regularised(
                 &first,
@@ -285,12 +285,21 @@ impl Passage {
         }
     }
 
+    /// Density of what is drawn from a layer of a side, kg/m3: a layer that is
+    /// all but gone gives the other's gas, and the volume is what counts.
+    fn drawn_density(&self, problem: &Problem<'_>, side: usize, layer: usize) -> f64 {
+        let [own, other] = [layer, 1 - layer].map(|k| &problem.layers.layers[self.sides[side][k]]);
+        let weight = own.available;
+        1.0 / (weight / own.density + (1.0 - weight) / other.density)
+    }
+
     /// Bands of a horizontal opening: what the pressure drives one way, and
     /// the buoyant exchange both ways.
-    fn lying(&self, opening: &Opening, below: &Side, above: &Side) -> Bands {
+    fn lying(&self, problem: &Problem<'_>, opening: &Opening, below: &Side, above: &Side) -> Bands {
         let height = opening.head;
         let area = self.stand.coefficient_width / opening.coefficient;
-        let (low, high) = (below.density[UPPER], above.density[LOWER]);
+        let low = self.drawn_density(problem, 0, UPPER);
+        let high = self.drawn_density(problem, 1, LOWER);
         let difference = below.pressure_at(height) - above.pressure_at(height);
         let flow = horizontal_regularised(
             area,
@@ -312,13 +321,15 @@ impl Passage {
         };
         let up = flow.driven.max(0.0);
         let down = (-flow.driven).max(0.0);
-        let slope = |on: f64| if on > 0.0 { flow.slope } else { 0.0 };
-        bands.push(band(
-            false,
-            high * (down + flow.exchange),
-            high * slope(down),
-        ));
-        bands.push(band(true, low * (up + flow.exchange), low * slope(up)));
+        // Without a difference the slope is steepest and must go one way, or
+        // the balance has none.
+        let (rising, falling) = if flow.driven >= 0.0 {
+            (flow.slope, 0.0)
+        } else {
+            (0.0, flow.slope)
+        };
+        bands.push(band(false, high * (down + flow.exchange), high * falling));
+        bands.push(band(true, low * (up + flow.exchange), low * rising));
         bands
     }
 
@@ -350,7 +361,8 @@ impl Passage {
         let upper = smoothstep((intake - first.interface) / INTAKE_BAND + 0.5);
         let mut bands = Bands::default();
         for (from_upper, share) in [(false, 1.0 - upper), (true, upper)] {
-            let scale = first.density[usize::from(from_upper)] * share * self.running * open;
+            let density = self.drawn_density(problem, 0, usize::from(from_upper));
+            let scale = density * share * self.running * open;
             bands.push(Band {
                 bottom: outlet - LYING_DEPTH,
                 top: outlet,
@@ -501,12 +513,12 @@ impl Passage {
             let [up, down] = to.map_or([0.0; 2], |room| internal[room]);
             let jet = 1.0 - self.stand.leak_share;
             let (mut out, mut gain) = (0.0, 0.0);
-            for k in 0..2 {
+            for (k, from) in source.into_iter().enumerate() {
                 let drawn = slope * part.drawn[k];
                 let growth = self.growth[direction][k];
                 let raised = part.raised[k];
                 let deposit = jet * self.deposit[direction][k];
-                out -= drawn / layers.layers[source[k]].density;
+                out -= drawn / layers.layers[from].density;
                 gain += drawn * (growth[0] * (1.0 - raised) + growth[1] * raised);
                 gain += drawn * (deposit * lifts * up + (jet - deposit) * drags * down);
             }

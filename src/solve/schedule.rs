@@ -21,8 +21,19 @@ struct Track {
 }
 
 impl Track {
+    /// Value when the moves that begin at `time` have begun.
     fn at(&self, time: f64) -> f64 {
-        match self.moves.iter().rev().find(|m| m.start <= time) {
+        self.after(self.moves.partition_point(|m| m.start <= time), time)
+    }
+
+    /// Value just before `time`.
+    fn before(&self, time: f64) -> f64 {
+        self.after(self.moves.partition_point(|m| m.start < time), time)
+    }
+
+    /// Value at a time by the first moves only.
+    fn after(&self, moves: usize, time: f64) -> f64 {
+        match self.moves[..moves].last() {
             None => self.start,
             Some(m) if time >= m.end => m.to,
             Some(m) => m.from + (m.to - m.from) * (time - m.start) / (m.end - m.start),
@@ -36,19 +47,23 @@ impl Track {
         }
     }
 
-    /// Begins to move; a move under way ends where it is.
+    /// Puts a move in among those known; each begins from wherever the one
+    /// before has come to. What waits may be known after what comes later.
     fn push(&mut self, time: f64, over: f64, to: f64) {
-        let from = self.at(time);
-        if let Some(last) = self.moves.last_mut() {
-            last.end = last.end.min(time.max(last.start));
-            last.to = from;
+        let place = self.moves.partition_point(|m| m.start <= time);
+        let (start, end) = (time, time + over);
+        self.moves.insert(
+            place,
+            Move {
+                start,
+                end,
+                from: to,
+                to,
+            },
+        );
+        for n in place..self.moves.len() {
+            self.moves[n].from = self.after(n, self.moves[n].start);
         }
-        self.moves.push(Move {
-            start: time,
-            end: time + over,
-            from,
-            to,
-        });
     }
 }
 
@@ -157,6 +172,11 @@ impl Schedule {
     /// Clear width of an opening at a time, m.
     pub fn clear_width(&self, opening: usize, time: f64) -> f64 {
         self.openings[opening].at(time)
+    }
+
+    /// Clear width of an opening just before a time, m.
+    pub fn clear_width_before(&self, opening: usize, time: f64) -> f64 {
+        self.openings[opening].before(time)
     }
 
     /// How far a fan runs at a time, 0..1.

@@ -22,11 +22,6 @@ const LONGEST_STEP: f64 = 10.0;
 /// Absolute tolerance of the scaled state as a share of the relative one.
 const ABSOLUTE_SHARE: f64 = 0.1;
 
-/// Time to either side of a landing within which what changes has jumped, s,
-/// and the least change of the open share of an opening that is one.
-const INSTANT: f64 = 1e-9;
-const JUMP: f64 = 1e-6;
-
 /// Precision to which the call for a change of the cut openings is located, s.
 const MOMENT: f64 = 1e-6;
 
@@ -42,8 +37,16 @@ pub fn stretches(driver: &mut Driver<'_, '_>, state: &mut Vec<f64>, out: &mut Ou
     let scale = driver.model.building.scales();
     let mut time = 0.0;
     let mut first_step = RESTART_STEP;
+    let mut jumped = f64::NEG_INFINITY;
     while plan.end - time > 1e-9 {
         let landing = next_landing(&driver.model.schedule, time, plan.end);
+        // A rate books what leaves with a leaf that moves, not with one that
+        // jumps. A stretch may begin twice at the same time.
+        if time > jumped {
+            let lost = driver.model.heat_of_jumps(time, state);
+            state[driver.model.building.layout.account(Account::EnergyLost)] += lost;
+            jumped = time;
+        }
         let end = begin(driver, state, time, landing.time);
         if time <= 0.0 {
             out.row(driver, time, state);
@@ -130,8 +133,6 @@ fn outcome(driver: &mut Driver<'_, '_>, solution: &Solution) -> (Option<Refusal>
 fn begin(driver: &mut Driver<'_, '_>, state: &mut [f64], time: f64, landing: f64) -> f64 {
     let (plan, building) = (driver.model.plan, driver.model.building);
     let mut rates = vec![0.0; state.len()];
-    let at = building.layout.account(Account::EnergyLost);
-    state[at] += heat_of_jumps(driver, time, state);
     // Every pass cuts at least one more opening.
     loop {
         let schedule = &driver.model.schedule;
@@ -156,25 +157,6 @@ fn begin(driver: &mut Driver<'_, '_>, state: &mut [f64], time: f64, landing: f64
             return end;
         }
     }
-}
-
-/// Heat that leaves with leaves that open in no time at `time`, J; negative when
-/// they bring it back.
-fn heat_of_jumps(driver: &Driver<'_, '_>, time: f64, state: &[f64]) -> f64 {
-    let (plan, building) = (driver.model.plan, driver.model.building);
-    let mut lost = 0.0;
-    for leaf in &building.leaves {
-        let opening = &plan.openings[leaf.opening];
-        let schedule = &driver.model.schedule;
-        let [before, after] = [time - INSTANT, time + INSTANT].map(|time| {
-            let width = schedule.clear_width(leaf.opening, time);
-            (width / opening.width).clamp(0.0, 1.0)
-        });
-        if (after - before).abs() > JUMP {
-            lost += leaf.area * (after - before) * building.stored(leaf.slab, state);
-        }
-    }
-    lost
 }
 
 fn stands(plan: &Plan, schedule: &Schedule, time: f64) -> Vec<Stand> {

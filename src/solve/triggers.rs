@@ -44,10 +44,14 @@ impl Triggers {
                 continue;
             }
             model.schedule.add(trigger.effect, begin, trigger.over);
-            self.fired.push(Fired {
-                trigger: index,
-                time: begin,
-            });
+            let place = self.fired.partition_point(|f| f.time <= begin);
+            self.fired.insert(
+                place,
+                Fired {
+                    trigger: index,
+                    time: begin,
+                },
+            );
         }
     }
 }

@@ -39,6 +39,7 @@ impl Dice {
     }
 
     /// A whole number below `count`.
+    #[allow(clippy::cast_possible_truncation, clippy::cast_sign_loss)]
     pub fn below(&mut self, count: usize) -> usize {
         ((self.unit() * count as f64) as usize).min(count - 1)
     }
@@ -273,7 +274,7 @@ fn shared_walls(dice: &mut Dice, rooms: &[Room]) -> Vec<SharedWall> {
     if rooms.len() < 2 || dice.chance(0.5) {
         return walls;
     }
-    for number in 0..1 + dice.below(2) {
+    for number in 0..=dice.below(2) {
         let (a, b) = (dice.below(rooms.len()), dice.below(rooms.len()));
         if a == b {
             continue;
@@ -356,7 +357,7 @@ fn burning(dice: &mut Dice) -> Burning {
 }
 
 fn items(dice: &mut Dice, rooms: &[Room], fuels: usize, end: f64) -> Vec<Item> {
-    (0..1 + dice.below(3))
+    (0..=dice.below(3))
         .map(|number| {
             let room = dice.below(rooms.len());
             let burning = burning(dice);
@@ -501,7 +502,9 @@ pub fn reordered(plan: &Plan, seed: u64) -> Reordered {
         item.fuel = FuelId(fuels[item.fuel.0]);
     }
     for action in &mut out.actions {
-        action.opening = OpeningId(openings[action.opening.0]);
+        if let Effect::ClearWidth { opening, .. } = &mut action.effect {
+            *opening = OpeningId(openings[opening.0]);
+        }
     }
     Reordered {
         plan: out,

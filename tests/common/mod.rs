@@ -3,10 +3,11 @@
 
 pub mod checks;
 pub mod generated;
+pub mod moving_air;
 
 use doorglow::plan::{
-    Burning, Choices, Course, Fuel, FuelId, Item, Lining, OpenAir, Opening, OpeningKind, Plan,
-    Room, RoomId, Space,
+    Action, Burning, Choices, Course, Curve, Effect, Fuel, FuelId, Item, Lining, OpenAir, Opening,
+    OpeningId, OpeningKind, Plan, Room, RoomId, Space,
 };
 
 /// 0 °C in K.
@@ -185,4 +186,53 @@ pub fn plan(
         choices: Choices::default(),
         tactic: None,
     }
+}
+
+/// The one-room door case of the design studies: 3.7 x 3.7 x 2.4 m of gypsum,
+/// fast growth to 300 kW, leaks over the height, the door opened at 240 s.
+pub fn one_room_door() -> Plan {
+    let gypsum = lining(0.0125, 0.17, 790.0, 1090.0);
+    let mut plan = plan(
+        600.0,
+        vec![room("room", 3.7, 3.7, 2.4, &gypsum)],
+        vec![door("door", 0, None, 0.9, 2.0, false), gap(0, 2.4, 0.01)],
+        vec![polyurethane()],
+        vec![Item {
+            name: "item".into(),
+            room: RoomId(0),
+            fuel: FuelId(0),
+            mass: 20.0,
+            burning: Burning::Growing(Curve::Growth {
+                alpha: 46.9,
+                peak: 300e3,
+            }),
+            surface_height: 0.3,
+            gap_to_wall: None,
+            in_corner: false,
+            ignition: 0.0,
+            at: None,
+        }],
+    );
+    plan.actions.push(Action {
+        name: "entry".into(),
+        time: 240.0,
+        over: 2.0,
+        effect: Effect::ClearWidth {
+            opening: OpeningId(0),
+            width: 0.9,
+        },
+        what: "open".into(),
+        because: None,
+    });
+    plan
+}
+
+/// Larch Row 3 as the scenario has it.
+pub fn larch_row() -> Plan {
+    let file = "scenarios/larch-row-3.toml";
+    let path = format!("{}/{file}", env!("CARGO_MANIFEST_DIR"));
+    let text = std::fs::read_to_string(path).unwrap();
+    doorglow::scenario::load(file, &text, None)
+        .map_err(|report| report.render(false, 100))
+        .unwrap()
 }
