@@ -141,7 +141,7 @@ quantities! {
     StationCarbonMonoxide, "CO", VolumeFraction, "Carbon monoxide by volume at head height.";
     StationCarbonDioxide, "CO2", VolumeFraction, "Carbon dioxide by volume at head height.";
     StationVisibility, "visibility", Length, "Distance at which a reflecting object is lost at head height, at most 30 m.";
-    StationFlux, "radiant flux from the layer", Flux, "Radiation of the upper layer and the ceiling at head height, by a view factor from the height.";
+    StationFlux, "radiant flux from the layer", Flux, "Radiation of the upper layer and the ceiling at head height, by a view factor from the height, less that of the start.";
 }
 
 /// One time history.

@@ -34,6 +34,8 @@ bad! {
     verify_bad_tactic, "tactic";
     verify_bad_moving_air, "moving_air";
     verify_bad_condition, "condition";
+    verify_bad_values_with_hints, "hints";
+    verify_bad_doubled_action, "doubled_action";
 }
 
 /// Nothing here keeps the scenario from running, and each caution is shown.

@@ -42,7 +42,10 @@ fn cli_run_twice_shows_the_same_results_and_keeps_the_files() {
     let second = place.run(&["run", "reed.toml"]);
     assert_eq!(second.status.code(), Some(0));
     assert_eq!(out(&first), out(&second));
-    assert!(side(&second).contains("--replace"), "{}", side(&second));
+    let last = side(&second).trim_end().lines().last().unwrap().to_owned();
+    for words in ["EARLIER run", "same scenario", "not changed", "--replace"] {
+        assert!(last.contains(words), "{last}");
+    }
     assert_eq!(
         fs::read_to_string(place.path("reed/record.csv")).unwrap(),
         "touched"
@@ -53,6 +56,29 @@ fn cli_run_twice_shows_the_same_results_and_keeps_the_files() {
         fs::read_to_string(place.path("reed/record.csv")).unwrap(),
         "touched"
     );
+}
+
+#[test]
+fn cli_earlier_results_of_another_scenario_are_not_called_the_same() {
+    let place = Place::new();
+    place.run(&["run", "reed.toml"]);
+    let changed = command::SCENARIO.replace("\"800 kW\"", "\"900 kW\"");
+    place.write("reed.toml", &changed);
+    let output = place.run(&["run", "reed.toml"]);
+    assert_eq!(output.status.code(), Some(0));
+    assert!(side(&output).contains("EARLIER run"), "{}", side(&output));
+    assert!(!side(&output).contains("same scenario"));
+}
+
+#[test]
+fn cli_columns_set_the_width() {
+    let place = Place::new();
+    for (columns, most) in [("20", 50), ("60", 60), ("500", 120)] {
+        let mut command = place.command(&["run", "reed.toml", "--replace"]);
+        let output = command.env("COLUMNS", columns).output().unwrap();
+        let widest = out(&output).lines().map(|line| line.chars().count()).max();
+        assert!(widest.unwrap() <= most, "{columns}: {widest:?}");
+    }
 }
 
 #[test]

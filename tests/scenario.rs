@@ -540,3 +540,12 @@ proptest! {
         read(&text);
     }
 }
+
+#[test]
+fn verify_the_example_at_the_top_of_the_reference_is_complete() {
+    let page = scenario::reference_page();
+    let example = page.split("```").nth(1).unwrap();
+    let text = example.strip_prefix("toml\n").unwrap();
+    let loaded = scenario::load_with_cautions("example.toml", text, None).unwrap();
+    assert!(loaded.cautions.faults.is_empty(), "{:?}", loaded.cautions);
+}

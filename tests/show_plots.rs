@@ -38,7 +38,7 @@ fn verify_every_plot_is_complete_and_small() {
     for (name, svg) in drawn() {
         assert!(svg.contains(CAUTION), "{name} has no caution");
         assert!(svg.contains(env!("CARGO_PKG_VERSION")), "{name}");
-        assert!(svg.contains("tactic: hold_the_door"), "{name}");
+        assert!(svg.contains("tactic: hold the door"), "{name}");
         assert!(!svg.contains("NaN") && !svg.contains("inf"), "{name}");
         assert!(svg.len() < 400_000, "{name} has {} bytes", svg.len());
         assert_eq!(svg.matches("<svg").count(), 1);

@@ -136,6 +136,9 @@ const SHORTEST: f64 = 0.1;
 const LONGEST: f64 = 60.0;
 
 fn output_interval(text: &str) -> Result<f64, String> {
+    if text.trim().parse::<f64>().is_ok() {
+        return Err(format!("it needs a unit: \"{} s\"", text.trim()));
+    }
     let seconds = units::read(text, units::Dimension::Time)
         .map_err(|error| format!("{error}; {}", error.help()))?;
     if (SHORTEST..=LONGEST).contains(&seconds) {

@@ -19,7 +19,7 @@ pub fn check(options: &CheckOptions) -> Result<Done, Failure> {
     match options.format {
         Format::Text => {
             faults::caution(&read.loaded.cautions);
-            streams::write(&scenario::building_text(plan))?;
+            streams::write(&scenario::building_and_tactics(plan, &read.loaded.tactics))?;
         }
         Format::Json => {
             let document = json!({
@@ -28,6 +28,10 @@ pub fn check(options: &CheckOptions) -> Result<Done, Failure> {
                 "usable": true,
                 "scenario_hash": read.hash,
                 "faults": faults::as_json(&read.loaded.cautions),
+                "tactics": read.loaded.tactics.iter().map(|tactic| json!({
+                    "name": tactic.name,
+                    "note": tactic.note,
+                })).collect::<Vec<_>>(),
                 "plan": plan,
             });
             streams::write(&format!("{document:#}\n"))?;

@@ -58,11 +58,15 @@ fn write_files(
             let count = files.len();
             Ok(format!("{count} files written to {}", folder.display()))
         }
-        Destination::Taken(folder) => Ok(format!(
-            "No files written: {} is there from an earlier run. \
-             --replace writes over its results, --out DIR writes elsewhere.",
-            folder.display()
-        )),
+        Destination::Taken(folder) => {
+            let same = show::files::scenario_hash_in(folder).is_some_and(|hash| hash == read.hash);
+            let of = if same { " of the same scenario" } else { "" };
+            Ok(format!(
+                "NOTHING WRITTEN: {} holds an EARLIER run{of} and was not changed; \
+                 use --replace, or --out DIR for another folder.",
+                folder.display()
+            ))
+        }
     }
 }
 

@@ -7,8 +7,9 @@ use std::io::{self, IsTerminal, Write};
 /// Width for a stream that is not a terminal.
 const PLAIN_WIDTH: usize = 80;
 
-/// Widest text that is still easy to read.
-const WIDEST: usize = 140;
+/// Narrowest and widest text that is still easy to read.
+const NARROWEST: usize = 50;
+const WIDEST: usize = 120;
 
 /// Writes results. A reader that has gone away (`| head`) is fine.
 ///
@@ -53,7 +54,13 @@ pub fn side_width() -> usize {
     width(terminal_size::terminal_size_of(io::stderr()))
 }
 
+/// `COLUMNS` goes before what the terminal says, as with other programs.
 fn width(size: Option<(terminal_size::Width, terminal_size::Height)>) -> usize {
-    size.map_or(PLAIN_WIDTH, |(width, _)| usize::from(width.0))
-        .clamp(40, WIDEST)
+    let stated = std::env::var("COLUMNS").ok();
+    stated
+        .and_then(|columns| columns.trim().parse().ok())
+        .or_else(|| size.map(|(width, _)| usize::from(width.0)))
+        .filter(|width| *width > 0)
+        .unwrap_or(PLAIN_WIDTH)
+        .clamp(NARROWEST, WIDEST)
 }

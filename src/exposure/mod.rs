@@ -98,7 +98,8 @@ fn upper_shares(record: &Record, plan: &Plan, station: &Station) -> Vec<f64> {
         .collect()
 }
 
-/// Radiation of layer and ceiling at the station's head at every output time.
+/// Radiation of layer and ceiling at the station's head at every output time,
+/// less what surfaces at the temperature of the start would send.
 fn fluxes(record: &Record, plan: &Plan, station: &Station) -> Vec<f64> {
     let room = Subject::Room(station.room.0);
     let interface = record.get(room, Quantity::Interface);
@@ -112,7 +113,9 @@ fn fluxes(record: &Record, plan: &Plan, station: &Station) -> Vec<f64> {
         .map(|row| {
             let drop = at(interface, row) - station.height;
             let share = flux::view_factor_below(plan_room.width, plan_room.length, drop);
-            share * flux::from_layer(at(emissivity, row), at(upper, row), at(ceiling, row))
+            let layer = flux::from_layer(at(emissivity, row), at(upper, row), at(ceiling, row));
+            let net = share * (layer - flux::from_layer(1.0, plan_room.temperature, 0.0));
+            if net.is_nan() { net } else { net.max(0.0) }
         })
         .collect()
 }

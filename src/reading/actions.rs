@@ -22,10 +22,13 @@ fn action(reader: &Reader<'_>, played: &Played<'_>) -> Moment {
         .moment(time, Kind::Action, subject, words(reader, played))
         .with(
             "clear width",
-            played.after().unwrap_or(f64::NAN),
+            played
+                .after()
+                .filter(|width| *width > 0.0)
+                .unwrap_or(f64::NAN),
             Dimension::Length,
         )
-        .with("heat burned", reader.burned().at(time), Dimension::Power)
+        .with("heat release", reader.burned().at(time), Dimension::Power)
         .weighing(Weight::Headline);
     let moment = match reader.main_item() {
         Some(item) => at_the_fire(reader, moment, item),

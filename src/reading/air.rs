@@ -92,7 +92,7 @@ fn front(reader: &Reader<'_>, item: usize, number: usize, played: &Played<'_>) -
     (arrival <= reader.end).then(|| {
         reader
             .moment(arrival, Kind::AirEarliest, Subject::Opening(index), text)
-            .with("way", path, Dimension::Length)
+            .with("distance", path, Dimension::Length)
             .with("speed of the front", path / delay, Dimension::Speed)
     })
 }

@@ -12,7 +12,7 @@ use crate::record::{Quantity, Subject};
 pub(super) const LAYER: f64 = 873.15;
 
 /// Layer temperature that is near, K: 500 °C.
-const LAYER_NEAR: f64 = 773.15;
+pub(super) const LAYER_NEAR: f64 = 773.15;
 
 /// Radiant flux on the floor of flashover, W/m2.
 pub(super) const FLOOR_FLUX: f64 = 20e3;

@@ -19,11 +19,12 @@ mod stations;
 mod summary;
 mod ways;
 
+pub use fire::BackBy;
 pub use flashover::{Answer, Flashover};
 pub use moment::{Band, Kind, Moment, Number, Since, Weight, spoken};
 pub use summary::{
-    Closures, Comeback, Extreme, FirstOpening, LimitSummary, RoomSummary, StationSummary, Stretch,
-    Summary, Worst,
+    Closures, Comeback, Extreme, FirstOpening, LimitSummary, Narrowed, RoomSummary, ShortOfAir,
+    StationSummary, Stretch, Summary, Worst,
 };
 pub use ways::FlowSummary;
 
@@ -33,7 +34,8 @@ use crate::record::Record;
 /// Where the bands on times after an opening come from, in words.
 pub const BAND_SOURCE: &str = "Bands (5 to 95 %) on times after an opening: -60 to +130 % of the time \
     since the opening, from a study of 300 varied runs of one bedroom fire short of air. \
-    They are not reckoned for this scenario.";
+    They are not reckoned for this scenario. Each is cut at the actions before and after it and \
+    at the end of the run.";
 
 /// All moments of a run, by time.
 pub fn moments(record: &Record, plan: &Plan) -> Vec<Moment> {

@@ -37,12 +37,13 @@ kinds! {
     Ignition, "ignition", "An item is lit.";
     Action, "action", "The crew or somebody moves an opening or switches a fan, or glass or a door gives way.";
     SmokeAtDoorHead, "smoke_at_door_head", "The smoke level of a room comes down to its highest door or window head for the first time.";
-    ShortOfAir, "short_of_air", "The heat burned is below half of the free rate.";
-    FlamesOut, "flames_out", "The heat burned is below 5 % of the free rate.";
-    Peak, "peak", "The heat burned is at its highest between two actions.";
+    SmokeToFloor, "smoke_to_floor", "The lower layer of a room is itself smoky: its soot above 30 % of the upper layer's, or the visibility in it below 2 m.";
+    ShortOfAir, "short_of_air", "The heat release is below half of the free rate, and the incoming air could not burn all of that.";
+    FlamesOut, "flames_out", "The heat release is below 5 % of the free rate.";
+    Peak, "peak", "The heat release is at its highest between two actions.";
     AirEarliest, "air_earliest", "The front of the cold air that an opening lets in reaches the seat of the fire at the earliest, by the speed of a gravity current.";
     AirFelt, "air_felt", "The oxygen at the flame base is one percentage point above what it was at the opening.";
-    BackUp, "back_up", "The heat burned is back above three times its starved level.";
+    BackUp, "back_up", "The heat release is back above three times its starved level or above its earlier peak, or a room is near flashover again.";
     LayerAt500, "layer_at_500", "The upper layer of a room reaches 500 °C.";
     LayerAt600, "layer_at_600", "The upper layer of a room reaches 600 °C.";
     FloorFlux, "floor_flux", "The radiant flux on the floor of a room reaches 20 kW/m2.";

@@ -41,6 +41,11 @@ impl Played<'_> {
     pub fn opens(&self) -> bool {
         self.after().is_some_and(|after| after > self.before)
     }
+
+    /// True when it makes its opening narrower.
+    pub fn narrows(&self) -> bool {
+        self.after().is_some_and(|after| after < self.before)
+    }
 }
 
 /// Changes that begin by `end`, by time, with the clear width that each one

@@ -18,6 +18,9 @@ const BAND: [f64; 2] = [0.4, 2.3];
 /// Free rates below this say nothing about shortage of air, W \[choice\].
 const SMALLEST_FREE_RATE: f64 = 5e3;
 
+/// A band that is cut to less than this says nothing, s \[choice\].
+const SHORTEST_BAND: f64 = 1.0;
+
 /// The record with its plan, prepared for reading.
 pub(super) struct Reader<'a> {
     pub record: &'a Record,
@@ -32,6 +35,10 @@ pub(super) struct Reader<'a> {
     free: Vec<f64>,
     /// Heat burned over free rate; not-a-number where nothing would burn.
     ratio: Vec<f64>,
+    /// The ratio, or half of what the incoming air could burn over the free
+    /// rate where that is more: a fire that has air enough again is no longer
+    /// short of it, however small it still is.
+    air_ratio: Vec<f64>,
 }
 
 impl<'a> Reader<'a> {
@@ -60,7 +67,9 @@ impl<'a> Reader<'a> {
                     f64::NAN
                 }
             })
-            .collect();
+            .collect::<Vec<f64>>();
+        let air = record.get(Subject::House, Quantity::AirCouldBurn);
+        let air_ratio = with_air(&ratio, &free, air);
         Self {
             record,
             plan,
@@ -69,7 +78,36 @@ impl<'a> Reader<'a> {
             burned,
             free,
             ratio,
+            air_ratio,
         }
+    }
+
+    /// Below one half while the fire is short of air: it burns less than half
+    /// of its free rate, and the incoming air could not burn all of that.
+    pub fn air_ratio(&self) -> History<'_> {
+        History::new(&self.record.time, &self.air_ratio)
+    }
+
+    /// When a fire that has air enough again at `time` is back at `share` of
+    /// its free rate: `None` when it is so at once, not-a-number when it is
+    /// not within the run or short of air again before.
+    pub fn back_at(&self, time: f64, share: f64) -> Option<f64> {
+        /// Later than this it is not at once, s \[choice\].
+        const AT_ONCE: f64 = 3.0;
+        self.burned_over_free()
+            .spells(Side::Below, share)
+            .into_iter()
+            .find(|spell| spell.start < time && spell.end.is_none_or(|end| end > time + AT_ONCE))
+            .map(|spell| spell.end.unwrap_or(f64::NAN))
+            .map(|back| {
+                let short = self.air_ratio().spells(Side::Below, share);
+                let again = |start: f64| start > time && start < back;
+                if short.iter().any(|spell| again(spell.start)) {
+                    f64::NAN
+                } else {
+                    back
+                }
+            })
     }
 
     /// One history of the record.
@@ -142,10 +180,18 @@ impl<'a> Reader<'a> {
     pub fn band(&self, time: f64) -> Option<Band> {
         let opening = self.last_opening(time)?.time;
         let lit = self.plan.items.iter().any(|item| item.ignition < opening);
-        (lit && time > opening).then(|| Band {
-            earliest: opening + BAND[0] * (time - opening),
-            latest: opening + BAND[1] * (time - opening),
-        })
+        if !lit || time <= opening {
+            return None;
+        }
+        // What is done before or after changes what would have followed.
+        let starts = self.stage_starts();
+        let last = starts.iter().rev().find(|&&start| start <= time);
+        let next = starts.iter().find(|&&start| start > time);
+        let band = Band {
+            earliest: (opening + BAND[0] * (time - opening)).max(last.map_or(0.0, |last| *last)),
+            latest: (opening + BAND[1] * (time - opening)).min(next.map_or(self.end, |next| *next)),
+        };
+        (band.latest - band.earliest >= SHORTEST_BAND).then_some(band)
     }
 
     /// Index of the item with the largest free rate: what "the fire" is.
@@ -259,6 +305,24 @@ impl Moment {
         self.weight = weight;
         self
     }
+}
+
+/// The larger of the ratio and of half of what the incoming air could burn over
+/// the free rate; the ratio alone where nothing is known of the air.
+fn with_air(ratio: &[f64], free: &[f64], air: &[f64]) -> Vec<f64> {
+    let enough = |row: usize| 0.5 * air.get(row).copied().unwrap_or(f64::NAN) / free[row];
+    ratio
+        .iter()
+        .enumerate()
+        .map(|(row, ratio)| {
+            if ratio.is_nan() {
+                f64::NAN
+            } else {
+                // The larger of a number and not-a-number is the number.
+                ratio.max(enough(row))
+            }
+        })
+        .collect()
 }
 
 /// Sum of a quantity over the items; missing values count as nothing.

@@ -2,9 +2,11 @@
 //! floor, flashover, pressure.
 
 use super::flashover;
-use super::history::Side;
+use super::history::{History, Side};
 use super::moment::{Kind, Moment, Weight};
 use super::reader::Reader;
+use super::summary::Stretch;
+use crate::physics::visibility::{REFLECTING, visibility};
 use crate::record::{Dimension, Quantity, Subject};
 
 /// 0 °C, K.
@@ -18,6 +20,20 @@ const LAYER_600: f64 = 600.0 + ZERO_CELSIUS;
 /// practice; doors are hard to open from about 80 Pa on.
 const HIGH_PRESSURE: f64 = 500.0;
 
+/// Share of the upper layer's soot from which the lower layer is smoky itself
+/// \[choice\].
+const SMOKY_SHARE: f64 = 0.3;
+
+/// Visibility below which the lower layer is smoky itself, m \[choice\].
+const SMOKY_VISIBILITY: f64 = 2.0;
+
+/// Visibility in the upper layer above which a room has no smoke worth the
+/// name, m \[choice\].
+const CLEAR: f64 = 3.0;
+
+/// Largest visibility that is reckoned, m, as at the stations.
+const FAR: f64 = 30.0;
+
 /// A criterion this close to the flashover that it completes is said with it,
 /// s \[choice\].
 const SAME_TIME: f64 = 1.0;
@@ -27,6 +43,7 @@ pub(super) fn moments(reader: &Reader<'_>) -> Vec<Moment> {
     let mut out = Vec::new();
     for room in 0..reader.plan.rooms.len() {
         out.extend(smoke_at_door_head(reader, room));
+        out.extend(smoke_to_floor(reader, room));
         let flashovers = flashovers(reader, room);
         let mut criteria = layer(reader, room, Kind::LayerAt500, LAYER_500);
         criteria.extend(layer(reader, room, Kind::LayerAt600, LAYER_600));
@@ -69,6 +86,74 @@ fn smoke_at_door_head(reader: &Reader<'_>, room: usize) -> Option<Moment> {
     )
 }
 
+/// True in rooms with fire or people.
+fn matters(reader: &Reader<'_>, room: usize) -> bool {
+    let plan = reader.plan;
+    plan.items.iter().any(|item| item.room.0 == room)
+        || plan.stations.iter().any(|station| station.room.0 == room)
+}
+
+/// How smoky the lower layer is: 1 or more from where the smoke counts as
+/// down to the floor. Nothing where the upper layer is clear itself.
+fn smokiness(reader: &Reader<'_>, room: usize) -> Vec<f64> {
+    let of = |quantity| reader.record.get(Subject::Room(room), quantity);
+    of(Quantity::LowerSoot)
+        .iter()
+        .zip(of(Quantity::UpperSoot))
+        .map(|(lower, upper)| {
+            let seen = |soot: f64| visibility(REFLECTING, soot, FAR);
+            if lower.is_nan() || upper.is_nan() {
+                f64::NAN
+            } else if seen(*upper) > CLEAR {
+                0.0
+            } else {
+                (lower / (SMOKY_SHARE * upper)).max(SMOKY_VISIBILITY / seen(*lower))
+            }
+        })
+        .collect()
+}
+
+/// When the smoke of a room reaches to the floor.
+pub fn smoke_to_floor_stretches(reader: &Reader<'_>, room: usize) -> Vec<Stretch> {
+    let smoky = smokiness(reader, room);
+    History::new(&reader.record.time, &smoky)
+        .spells(Side::Above, 1.0)
+        .into_iter()
+        .map(|spell| Stretch {
+            from: spell.start,
+            to: spell.end,
+        })
+        .collect()
+}
+
+fn smoke_to_floor(reader: &Reader<'_>, room: usize) -> Vec<Moment> {
+    let subject = Subject::Room(room);
+    let smoky = smokiness(reader, room);
+    let name = reader.room_name(room);
+    let weight = if matters(reader, room) {
+        Weight::Plain
+    } else {
+        Weight::Detail
+    };
+    reader
+        .by_stage(History::new(&reader.record.time, &smoky), Side::Above, 1.0)
+        .into_iter()
+        .map(|spell| {
+            let text = format!("{name}: smoke to the floor");
+            let lower = reader.history(subject, Quantity::LowerSoot).at(spell.start);
+            reader
+                .moment(spell.start, Kind::SmokeToFloor, subject, text)
+                .with(
+                    "visibility below the smoke level",
+                    visibility(REFLECTING, lower, FAR),
+                    Dimension::Length,
+                )
+                .with_spell(spell)
+                .weighing(weight)
+        })
+        .collect()
+}
+
 /// Layer of a room reaches a temperature.
 fn layer(reader: &Reader<'_>, room: usize, kind: Kind, temperature: f64) -> Vec<Moment> {
     let subject = Subject::Room(room);
@@ -91,7 +176,7 @@ fn layer(reader: &Reader<'_>, room: usize, kind: Kind, temperature: f64) -> Vec<
                     Dimension::Length,
                 )
                 .with(
-                    "heat burned",
+                    "heat release",
                     reader.burned().at(spell.start),
                     Dimension::Power,
                 )

@@ -40,7 +40,7 @@ pub(super) fn limits(station: &Station) -> [Limit; 4] {
             quantity: Quantity::StationTemperature,
             value: limits.attention_temperature,
             side: Side::Above,
-            words: "temperature at the limit 'attention'",
+            words: "temperature at the training limit 'attention'",
             weight: Weight::Plain,
         },
         Limit {
@@ -48,7 +48,7 @@ pub(super) fn limits(station: &Station) -> [Limit; 4] {
             quantity: Quantity::StationTemperature,
             value: limits.out_temperature,
             side: Side::Above,
-            words: "temperature at the limit 'out'",
+            words: "temperature at the training limit 'be out'",
             weight: Weight::Headline,
         },
         Limit {
@@ -74,20 +74,15 @@ pub(super) fn moments(reader: &Reader<'_>) -> Vec<Moment> {
     out
 }
 
-/// Station in words: name, room, posture.
-fn place(reader: &Reader<'_>, station: &Station) -> String {
-    let room = reader.room_name(station.room.0);
-    format!(
-        "station {} ({room}, {})",
-        spoken(&station.name),
-        station.posture
-    )
+/// Station in words. A place, since somebody may not be there yet.
+fn place(station: &Station) -> String {
+    format!("at the place of {}", spoken(&station.name))
 }
 
 fn reached(reader: &Reader<'_>, index: usize, station: &Station, limit: Limit) -> Vec<Moment> {
     let subject = Subject::Station(index);
     let history = reader.history(subject, limit.quantity);
-    let place = place(reader, station);
+    let place = place(station);
     reader
         .by_stage(history, limit.side, limit.value)
         .into_iter()
@@ -109,7 +104,7 @@ fn reached(reader: &Reader<'_>, index: usize, station: &Station, limit: Limit) -
 
 fn smoke_at_head(reader: &Reader<'_>, index: usize, station: &Station) -> Vec<Moment> {
     let level = reader.history(Subject::Room(station.room.0), Quantity::Interface);
-    let place = place(reader, station);
+    let place = place(station);
     reader
         .by_stage(level, Side::Below, station.height)
         .into_iter()

@@ -2,11 +2,12 @@
 
 use serde::Serialize;
 
-use super::fire::{self, SHORT_OF_AIR};
+use super::fire::{self, BackBy, SHORT_OF_AIR};
 use super::flashover::{self, Flashover};
 use super::history::Side;
 use super::moment::{Band, Kind};
 use super::reader::Reader;
+use super::rooms;
 use super::stations;
 use super::ways::{self, FlowSummary};
 use crate::record::{Closure, Dimension, Ended, Quantity, Subject};
@@ -35,6 +36,21 @@ pub struct Stretch {
     pub to: Option<f64>,
 }
 
+/// A stretch of time short of air.
+#[derive(Debug, Clone, Copy, PartialEq, Serialize)]
+pub struct ShortOfAir {
+    /// From, s.
+    pub from: f64,
+    /// To, s; `None` when it lasts to the end of the record.
+    pub to: Option<f64>,
+    /// True when it ends because the incoming air could burn more than the
+    /// free rate, with the fire still below half of that.
+    pub has_air_again: bool,
+    /// When the fire is then back at half of its free rate, s; `None` when it
+    /// is so at once or not within the record.
+    pub half_again: Option<f64>,
+}
+
 /// A room in a few numbers.
 #[derive(Debug, Clone, PartialEq, Serialize)]
 pub struct RoomSummary {
@@ -47,6 +63,8 @@ pub struct RoomSummary {
     pub hottest_layer: Option<Extreme>,
     /// Lowest smoke level, m above the floor.
     pub lowest_smoke_level: Option<Extreme>,
+    /// When the smoke reached to the floor: the lower layer smoky itself.
+    pub smoke_to_floor: Vec<Stretch>,
     /// When momentum mixed it.
     pub mixed: Vec<Stretch>,
     /// Flashover before the first opening, or over the whole run without one.
@@ -111,18 +129,43 @@ pub struct FirstOpening {
 }
 
 /// What the fire does after the first opening.
-#[derive(Debug, Clone, Copy, PartialEq, Serialize)]
+#[derive(Debug, Clone, PartialEq, Serialize)]
 #[serde(rename_all = "snake_case")]
 pub enum Comeback {
-    /// It was short of air and comes back above three times its starved level.
+    /// It was short of air and comes back: above three times its starved
+    /// level, above its earlier peak, or with a room near flashover again.
     At {
         /// When, s.
         time: f64,
+        /// By what.
+        by: BackBy,
         /// Earliest and latest to expect.
         band: Option<Band>,
     },
+    /// It was short of air and grows after the opening, but not as far as that.
+    Grew {
+        /// Heat release at the opening, W.
+        from: f64,
+        /// Highest heat release after it, W.
+        to: Extreme,
+        /// Its starved level, W.
+        level: f64,
+        /// The first opening that was made narrower on the way.
+        narrowed: Option<Narrowed>,
+    },
     /// It was short of air and does not come back within the run.
     NotInTheModel,
+}
+
+/// An opening that was shut or made narrower.
+#[derive(Debug, Clone, PartialEq, Serialize)]
+pub struct Narrowed {
+    /// Name of the opening.
+    pub opening: String,
+    /// True when nothing stays open.
+    pub shut: bool,
+    /// When, s.
+    pub time: f64,
 }
 
 /// Relative closures of the ledger.
@@ -157,12 +200,13 @@ pub struct Summary {
     pub comeback: Option<Comeback>,
     /// Highest heat burned from the first opening on, W.
     pub peak_after: Option<Extreme>,
-    /// What the incoming air could burn when it burned most after the opening, W.
+    /// The most that the incoming air could burn in the 30 s before it burned
+    /// most after the opening, W; `None` when an opening was narrowed in them.
     pub air_could_burn_at_peak: Option<f64>,
     /// Lowest oxygen at the base of the main item's flame, wet volume fraction.
     pub lowest_base_oxygen: Option<Extreme>,
     /// When the fire was short of air.
-    pub short_of_air: Vec<Stretch>,
+    pub short_of_air: Vec<ShortOfAir>,
     /// Highest size of the pressure in any room, Pa.
     pub highest_pressure: Option<Extreme>,
     /// Rooms, in the order of the scenario.
@@ -175,6 +219,39 @@ pub struct Summary {
     pub closures: Closures,
     /// Number of things that a user should know about the run.
     pub flags: usize,
+    /// What should be known with every reading of this run, in words.
+    pub notes: Vec<&'static str>,
+}
+
+/// How long before its peak a fire may have breathed what it burns then, s
+/// \[choice\].
+const BREATHED: f64 = 30.0;
+
+/// Said of carbon monoxide when the fire was short of air (`docs/method.md`,
+/// 24).
+const CARBON_MONOXIDE: &str = "CO is reckoned with the yield of a fire with plenty of air; \
+    short of air it can be ten times higher. Read every CO as \"at least\".";
+
+/// What holds for all readings of this run.
+fn notes(reader: &Reader<'_>) -> Vec<&'static str> {
+    if short_of_air(reader).is_empty() {
+        Vec::new()
+    } else {
+        vec![CARBON_MONOXIDE]
+    }
+}
+
+/// The most that the incoming air could burn shortly before the peak, W.
+fn air_at_peak(reader: &Reader<'_>, peak: f64, opened: f64) -> Option<f64> {
+    let from = (peak - BREATHED).max(opened);
+    let narrowed = |played: &super::played::Played<'_>| {
+        played.narrows() && played.time >= from && played.time <= peak
+    };
+    if reader.played.iter().any(narrowed) {
+        return None;
+    }
+    let air = reader.history(Subject::House, Quantity::AirCouldBurn);
+    air.largest(from, peak).map(|(_, value)| value)
 }
 
 /// Reads the summary.
@@ -185,7 +262,6 @@ pub(super) fn read(reader: &Reader<'_>) -> Summary {
     let burned = reader.burned();
     let peak_before = extreme(burned.largest(0.0, before_end));
     let peak_after = opened.and_then(|opened| extreme(burned.largest(opened, reader.end)));
-    let air = reader.history(Subject::House, Quantity::AirCouldBurn);
     let ledger = &reader.record.ledger;
     let relative = |closure: &Closure| closure.relative;
     Summary {
@@ -195,11 +271,12 @@ pub(super) fn read(reader: &Reader<'_>) -> Summary {
         lowest_before: opened
             .zip(peak_before)
             .and_then(|(opened, peak)| extreme(burned.smallest(peak.time, opened))),
-        comeback: opened.and_then(|opened| comeback(reader, opened)),
+        comeback: opened.and_then(|opened| fire::comeback(reader, opened)),
         peak_after,
         air_could_burn_at_peak: peak_after
-            .map(|peak| air.at(peak.time))
-            .filter(|value| value.is_finite()),
+            .zip(opened)
+            .and_then(|(peak, opened)| air_at_peak(reader, peak.time, opened)),
+        notes: notes(reader),
         lowest_base_oxygen: lowest_base_oxygen(reader),
         short_of_air: short_of_air(reader),
         highest_pressure: highest_pressure(reader),
@@ -239,31 +316,27 @@ fn first_opening(reader: &Reader<'_>) -> Option<FirstOpening> {
         })
 }
 
-/// Whether a fire that was short of air at the first opening comes back after
-/// that one or a later one.
-fn comeback(reader: &Reader<'_>, opened: f64) -> Option<Comeback> {
-    fire::starved_level(reader, opened)?;
-    let back = fire::back_up(reader).into_iter().next();
-    Some(back.map_or(Comeback::NotInTheModel, |moment| Comeback::At {
-        time: moment.time,
-        band: moment.band,
-    }))
-}
-
 fn lowest_base_oxygen(reader: &Reader<'_>) -> Option<Extreme> {
     let item = reader.main_item()?;
     let base = reader.history(Subject::Item(item), Quantity::BaseOxygen);
     extreme(base.smallest(0.0, reader.end))
 }
 
-fn short_of_air(reader: &Reader<'_>) -> Vec<Stretch> {
+fn short_of_air(reader: &Reader<'_>) -> Vec<ShortOfAir> {
     reader
-        .burned_over_free()
+        .air_ratio()
         .spells(Side::Below, SHORT_OF_AIR)
         .into_iter()
-        .map(|spell| Stretch {
+        .map(|spell| ShortOfAir {
             from: spell.start,
             to: spell.end,
+            has_air_again: spell
+                .end
+                .is_some_and(|end| reader.back_at(end, SHORT_OF_AIR).is_some()),
+            half_again: spell
+                .end
+                .and_then(|end| reader.back_at(end, SHORT_OF_AIR))
+                .filter(|time| time.is_finite()),
         })
         .collect()
 }
@@ -303,6 +376,7 @@ fn room_summary(reader: &Reader<'_>, room: usize, opened: Option<f64>) -> RoomSu
             .map_or_else(String::new, |r| r.name.clone()),
         hottest_layer: extreme(hottest),
         lowest_smoke_level: extreme(lowest),
+        smoke_to_floor: rooms::smoke_to_floor_stretches(reader, room),
         mixed: ways::mixed_stretches(reader, room),
         flashover_before: flashover::read(reader, room, 0.0, opened.unwrap_or(reader.end)),
         flashover_after: opened

@@ -11,15 +11,15 @@ use crate::plan::{Opening, OpeningKind, Space};
 use crate::record::{Dimension, Quantity, Subject};
 
 /// Flows below this have no direction worth telling, kg/s \[choice\]: about
-/// what a shut door leaks in a fire.
-const SMALLEST_FLOW: f64 = 0.1;
+/// twice what a shut door leaks in a fire.
+const SMALLEST_FLOW: f64 = 0.2;
 
 /// Clear width from which an opening counts as open, m \[choice\].
 const AJAR: f64 = 0.01;
 
 /// Rise of the mean of the gas from which mixing is told, K \[choice\]: in cold
 /// rooms there are no layers to mix.
-const WARM: f64 = 10.0;
+const WARM: f64 = 20.0;
 
 /// Excess of one direction over the other, of their sum, from which the flow
 /// counts as one-way \[choice\]: less than a fiftieth goes back.

@@ -10,8 +10,8 @@ macro_rules! line {
 mod actions;
 mod openings;
 
-use super::hand;
 use super::resolve::{energy, open_area, stands_open};
+use super::{Offered, hand};
 use crate::plan::{Burning, Curve, Item, Opening, Plan, RoomId, Space};
 use std::fmt::Write as _;
 
@@ -22,13 +22,20 @@ const LINING_TIME: f64 = 120.0;
 /// could feed, leakage, fire load, when the fire may run short of air, and
 /// bands for flashover. Nothing is run.
 pub fn building_text(plan: &Plan) -> String {
+    building_and_tactics(plan, &[])
+}
+
+/// As [`building_text`], with the tactics that the file offers.
+pub fn building_and_tactics(plan: &Plan, offered: &[Offered]) -> String {
     let mut out = String::new();
     rooms(&mut out, plan);
     openings::openings(&mut out, plan);
     openings::wind(&mut out, plan);
     openings::fans(&mut out, plan);
     contents(&mut out, plan);
+    stations(&mut out, plan);
     actions::actions(&mut out, plan);
+    actions::tactics(&mut out, offered);
     out.push_str(
         "\nHand figures are cross-checks with wide bands; the run does not use them.\n\
          For planning and teaching only, never for decisions at a live incident.\n",
@@ -93,6 +100,35 @@ fn linings(out: &mut String, plan: &Plan) {
             names.join(", ")
         };
         line!(out, "  {who}: {words}");
+    }
+}
+
+/// Stations and the limits that are watched there.
+fn stations(out: &mut String, plan: &Plan) {
+    if plan.stations.is_empty() {
+        return;
+    }
+    line!(out, "\nSTATIONS");
+    let widest = widest(plan.stations.iter().map(|at| at.name.as_str()));
+    for station in &plan.stations {
+        let room = plan.rooms.get(station.room.0);
+        line!(
+            out,
+            "  {:widest$}  {}, {}, head at {:.2} m",
+            station.name,
+            room.map_or("", |room| room.name.as_str()),
+            station.posture,
+            station.height,
+        );
+        let limits = &station.limits;
+        line!(
+            out,
+            "    limits: attention {:.0} °C, be out {:.0} °C, oxygen {:.1} %, visibility {:.1} m",
+            limits.attention_temperature - 273.15,
+            limits.out_temperature - 273.15,
+            limits.oxygen * 100.0,
+            limits.visibility,
+        );
     }
 }
 
@@ -171,7 +207,7 @@ fn short_of_air(out: &mut String, plan: &Plan, item: &Item) {
     ) {
         line!(
             out,
-            "    by hand short of air about {early:.0} to {late:.0} s after it is lit\n    (15 to 13 % oxygen with all of that air mixed; a single room runs short sooner)"
+            "    short of air by hand calculation about {early:.0} to {late:.0} s after it is lit\n    (15 to 13 % oxygen with all of that air mixed; a single room runs short sooner)"
         );
     }
 }
@@ -194,7 +230,7 @@ fn flashover(out: &mut String, plan: &Plan, id: RoomId) {
     if factor <= 0.0 {
         line!(
             out,
-            "    flashover by hand: not asked, every door and window of {} is shut at ignition",
+            "    flashover by hand calculation: not asked, every door and window of {} is shut at ignition",
             room.name
         );
         return;
@@ -204,7 +240,7 @@ fn flashover(out: &mut String, plan: &Plan, id: RoomId) {
         .map(|conductance| hand::flashover_mqh(factor, surface, conductance));
     line!(
         out,
-        "    flashover of {} by hand, +/- 30 %, openings as at ignition ({:.2} MW of air):\n      Thomas {:.2} MW, Babrauskas {:.2} MW{}",
+        "    flashover of {} by hand calculation, +/- 30 %, openings as at ignition ({:.2} MW of air):\n      Thomas {:.2} MW, Babrauskas {:.2} MW{}",
         room.name,
         hand::air_limit(factor) / 1e6,
         hand::flashover_thomas(factor, surface) / 1e6,

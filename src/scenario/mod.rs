@@ -16,7 +16,7 @@ mod reference;
 mod resolve;
 mod resolved;
 
-pub use building::building_text;
+pub use building::{building_and_tactics, building_text};
 pub use fault::{Fault, Report, Severity, code};
 pub use own_models::{Beside, Models};
 pub use reference::reference_page;
@@ -26,6 +26,15 @@ use crate::plan::Plan;
 use sha2::{Digest, Sha256};
 use std::fmt::Write as _;
 
+/// A tactic that a scenario offers.
+#[derive(Debug, Clone, PartialEq, Eq)]
+pub struct Offered {
+    /// Its name, for `--tactic`.
+    pub name: String,
+    /// What the file notes about it.
+    pub note: Option<String>,
+}
+
 /// A plan and what looks odd about it.
 #[derive(Debug, Clone)]
 pub struct Loaded {
@@ -33,6 +42,8 @@ pub struct Loaded {
     pub plan: Plan,
     /// The user's own models file, when the scenario names one.
     pub models: Option<Models>,
+    /// The tactics that can be played, in the order of the file.
+    pub tactics: Vec<Offered>,
     /// Cautions; nothing that keeps it from running.
     pub cautions: Report,
 }
@@ -104,8 +115,17 @@ pub fn load_beside(
     Ok(Loaded {
         plan,
         models,
+        tactics: offered(&sheet),
         cautions: report,
     })
+}
+
+fn offered(sheet: &read::Sheet) -> Vec<Offered> {
+    let tactics = sheet.tactics.iter().map(|tactic| Offered {
+        name: tactic.named.name.value.clone(),
+        note: tactic.named.values.text("note").map(str::to_owned),
+    });
+    tactics.collect()
 }
 
 /// Text of a file from its bytes.

@@ -6,6 +6,49 @@ use crate::plan::Choices;
 use crate::units::{self, Dimension};
 use std::fmt::Write as _;
 
+/// A small scenario for the top of the page, and what to know of TOML.
+const SMALL: &str = r#"
+## A small one, complete
+
+```toml
+title = "Reed Lane 2: kitchen door opened"
+duration = "10 min"
+
+[room.kitchen]
+width = "3.0 m"
+length = "4.0 m"
+height = "2.4 m"
+
+[opening.back_door]
+kind = "door"
+between = ["kitchen", "open air"]
+width = "0.9 m"
+head = "2.0 m"
+position = "shut"
+
+[item.bin]
+room = "kitchen"
+fuel = "polyurethane mattress with bedding"
+mass = "10 kg"
+growth = "fast"
+peak = "900 kW"
+surface_height = "0.5 m"
+
+[station.crew]
+room = "kitchen"
+posture = "kneeling"
+
+[[action]]
+name = "entry"
+at = "5 min"
+open = "back_door"
+```
+
+`[room.kitchen]` in single brackets begins one table with a name of its own; `[[action]]` in double brackets
+begins one of many in a row, and is written again for each.
+Text and quantities stand in quotes; only true, false and plain numbers do without.
+"#;
+
 /// The page `docs/scenario.md`; a test keeps the file in step.
 pub fn reference_page() -> String {
     let mut out = String::from(
@@ -15,8 +58,11 @@ pub fn reference_page() -> String {
          One TOML file says what the building is, what burns, who is there and what is done when. \
          Every quantity is text with its unit, metric or US customary. \
          `doorglow check FILE` reads a file, names every fault at once and runs nothing.\n\n\
-         Names of rooms, openings and so on are yours. `\"open air\"` is the outside.\n",
+         Names of rooms, openings and so on are yours. `\"open air\"` is the outside. \
+         Names of fuels, linings, growth classes and positions come from the catalogue: \
+         `doorglow catalogue` lists them with their sources.\n",
     );
+    out.push_str(SMALL);
     out.push_str("\n## Units\n\n| quantity | units |\n| --- | --- |\n");
     for &dimension in Dimension::ALL {
         let symbols: Vec<String> = dimension

@@ -142,6 +142,16 @@ fn refuse_foreign(dir: &Path, files: &[(String, Vec<u8>)]) -> Result<(), FilesEr
     }
 }
 
+/// Hash of the scenario whose results a folder holds, when it is one of ours.
+pub fn scenario_hash_in(dir: &Path) -> Option<String> {
+    /// The hash stands near the top of the file.
+    const HEAD: usize = 8192;
+    let start = begins(&dir.join(RECORD_FILE), HEAD)?;
+    let text = String::from_utf8_lossy(&start);
+    let (_, rest) = text.split_once("\"scenario_hash\":")?;
+    rest.split('"').nth(1).map(str::to_owned)
+}
+
 fn is_ours(dir: &Path) -> bool {
     begins(&dir.join(RECORD_FILE), RECORD_START.len()).is_some_and(|start| start == RECORD_START)
 }

@@ -40,6 +40,13 @@ impl QuantityError {
             | Self::WrongDimension(_, _, dimension) => {
                 format!("write it like \"{}\"", dimension.example())
             }
+            Self::NoUnit(number, Dimension::Time) => match number.parse::<f64>() {
+                Ok(count) if count > 60.0 && count % 60.0 == 0.0 => {
+                    format!("write the unit: \"{number} s\" or \"{} min\"", count / 60.0)
+                }
+                Ok(count) if count > 60.0 => format!("write the unit: \"{number} s\""),
+                _ => format!("write the unit: \"{number} s\" or \"{number} min\""),
+            },
             Self::NoUnit(number, dimension) => {
                 let symbol = dimension
                     .example()

@@ -91,7 +91,7 @@ impl Place {
     pub fn command(&self, arguments: &[&str]) -> Command {
         let mut command = Command::cargo_bin("doorglow").unwrap();
         command.current_dir(self.dir.path()).args(arguments);
-        for name in ["NO_COLOR", "CLICOLOR", "CLICOLOR_FORCE"] {
+        for name in ["NO_COLOR", "CLICOLOR", "CLICOLOR_FORCE", "COLUMNS"] {
             command.env_remove(name);
         }
         command

@@ -1,7 +1,7 @@
 //! What is done, in words.
 
-use super::super::hand;
 use super::super::resolved::condition;
+use super::super::{Offered, hand};
 use super::clock;
 use crate::plan::{Effect, GIVES_WAY, Plan};
 use crate::units::{Dimension, rounded};
@@ -38,7 +38,20 @@ pub(super) fn actions(out: &mut String, plan: &Plan) {
     }
 }
 
-/// What a change does, in words and by hand.
+/// Tactics that can be played, with their notes.
+pub(super) fn tactics(out: &mut String, offered: &[Offered]) {
+    if offered.is_empty() {
+        return;
+    }
+    line!(out, "\nTACTICS (play one with --tactic NAME)");
+    for tactic in offered {
+        let note = tactic.note.as_deref().unwrap_or("");
+        let colon = if note.is_empty() { "" } else { ": " };
+        line!(out, "  {}{colon}{note}", tactic.name);
+    }
+}
+
+/// What a change does, in words and by hand calculation.
 fn done(plan: &Plan, effect: Effect, what: &str, because: Option<&str>) -> String {
     let because = because.map_or_else(String::new, |because| format!(" ({because})"));
     match effect {
@@ -50,9 +63,12 @@ fn done(plan: &Plan, effect: Effect, what: &str, because: Option<&str>) -> Strin
                 let area = opening.area * width / opening.width;
                 return format!("{} {what}{because}; {area:.2} m2", opening.name);
             }
+            if width <= 0.0 {
+                return format!("{} {what}{because}", opening.name);
+            }
             let factor = hand::opening_factor(width, opening.head - opening.sill);
             format!(
-                "{} {what}{because}; {width:.2} m clear, {:.2} MW by hand",
+                "{} {what}{because}; {width:.2} m clear, {:.2} MW by hand calculation",
                 opening.name,
                 hand::air_limit(factor) / 1e6
             )

@@ -11,7 +11,7 @@ use std::fmt::Write as _;
 pub(super) fn openings(out: &mut String, plan: &Plan) {
     line!(
         out,
-        "\nOPENINGS (air that can burn through, by hand: 1500 A sqrt(H) kW)"
+        "\nOPENINGS (air that can burn through, hand calculation: 1500 A sqrt(H) kW)"
     );
     let moved = || {
         plan.openings

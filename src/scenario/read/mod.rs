@@ -150,6 +150,15 @@ fn syntax(error: &toml::de::Error, text: &str) -> Fault {
     let message = error.message();
     if message.starts_with("duplicate key") {
         let name = text.get(span.clone()).unwrap_or_default();
+        if let Some(header) = list_header(name, span.start, text) {
+            return Fault::error(
+                code::SAME_NAME,
+                span,
+                format!("`{name}` stands in single brackets beside another"),
+            )
+            .label("again here")
+            .help(format!("there may be many: begin each one with {header}"));
+        }
         return Fault::error(
             code::SAME_NAME,
             span,
@@ -160,6 +169,17 @@ fn syntax(error: &toml::de::Error, text: &str) -> Fault {
     }
     Fault::error(code::SYNTAX, span, message.to_owned())
         .help("the file is TOML: `key = \"value\"`, text in quotes, tables as [room.hall]")
+}
+
+/// How a table that may stand many times in a row is begun, when the line of a
+/// doubled name is its header in single brackets.
+fn list_header(name: &str, at: usize, text: &str) -> Option<String> {
+    let before = text.get(..at)?.rsplit('\n').next()?;
+    let after = text.get(at..)?.lines().next()?;
+    let line = format!("{before}{after}");
+    let inner = line.trim().strip_prefix('[')?.split(']').next()?;
+    let is_list = name == fields::ACTION.name && inner.ends_with(name) && !inner.starts_with('[');
+    is_list.then(|| format!("[[{inner}]]"))
 }
 
 /// A table given twice makes each of its keys given twice: the table is named

@@ -54,9 +54,10 @@ impl<'c> Reader<'c> {
         entries: Vec<Entry>,
     ) -> Values {
         let mut values = Values::new(table, span);
+        let mut misspelt = Vec::new();
         for (key, key_span, value) in entries {
             let Some(field) = table.field(key) else {
-                self.unknown_key(table, key, key_span);
+                misspelt.extend(self.unknown_key(table, key, key_span));
                 continue;
             };
             match self.value(field, value) {
@@ -72,7 +73,13 @@ impl<'c> Reader<'c> {
             }
         }
         for field in table.fields() {
-            if !values.has(field.name) {
+            if values.has(field.name) {
+                continue;
+            }
+            if matches!(field.need, Need::Required) && misspelt.contains(&field.name) {
+                // Said already: it is there under a name that is nearly its own.
+                values.put_faulty(field.name);
+            } else {
                 self.absent(table, field, &mut values);
             }
         }
@@ -122,7 +129,8 @@ impl<'c> Reader<'c> {
         }
     }
 
-    fn unknown_key(&mut self, table: &Table, key: &str, span: Range<usize>) {
+    /// Notes an unknown key and gives the known ones that it may stand for.
+    fn unknown_key(&mut self, table: &Table, key: &str, span: Range<usize>) -> Vec<&'static str> {
         let known = || table.fields().map(|field| field.name);
         let near = names::near(key, known());
         let help = if near.is_empty() {
@@ -140,6 +148,7 @@ impl<'c> Reader<'c> {
             .label("unknown")
             .help(help),
         );
+        near
     }
 
     /// A list of tables.

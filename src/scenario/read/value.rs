@@ -162,7 +162,23 @@ impl Reader<'_> {
                 self.unknown_word(field, value.span(), text, &known, &or);
                 None
             }
-            _ => self.quantity(field, value, range),
+            text => {
+                let meant_a_word = text.is_some_and(|text| text.contains('/'));
+                let before = self.faults.len();
+                let read = self.quantity(field, value, range);
+                if meant_a_word
+                    && let Some(fault) = self.faults.get_mut(before)
+                    && fault.code == code::UNIT
+                {
+                    let words = known.join("\", \"");
+                    fault.help = Some(format!(
+                        "write one of \"{words}\" (or {} like \"{}\")",
+                        range.0.words(),
+                        range.0.example()
+                    ));
+                }
+                read
+            }
         }
     }
 

@@ -2,7 +2,7 @@
 
 use super::palette::{INK, Stroke};
 use super::picture::{Curve, Panel, Picture};
-use super::rooms::{ShownRoom, shown_rooms};
+use super::rooms::{ShownRoom, left_out, shown_rooms};
 use super::{blank, points};
 use crate::plan::Plan;
 use crate::record::{Quantity, Record, Subject};
@@ -17,7 +17,7 @@ pub fn picture(record: &Record, plan: &Plan) -> Picture {
         record,
         plan,
         "oxygen_and_fuel".to_owned(),
-        "Oxygen and unburned fuel".to_owned(),
+        "Oxygen and unburned fuel",
     );
     let mut rooms = shown_rooms(record, plan);
     rooms.truncate(MOST_ROOMS);
@@ -39,7 +39,10 @@ pub fn picture(record: &Record, plan: &Plan) -> Picture {
     picture.panels = vec![
         Panel {
             heading: "Oxygen [% by volume, water vapour included]".to_owned(),
-            note: "line: upper layer, dashes: lower layer".to_owned(),
+            note: format!(
+                "line: upper layer, dashes: lower layer{}",
+                left_out(plan, &rooms)
+            ),
             height: 240.0,
             at_least: 21.0,
             curves: oxygen,

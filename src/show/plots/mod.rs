@@ -20,6 +20,7 @@ pub use canvas::PlotError;
 use super::files::file_word;
 use super::quantity::unit;
 use crate::plan::Plan;
+use crate::reading::spoken;
 use crate::record::{Quantity, Record, Subject};
 use picture::{Mark, Picture};
 
@@ -62,15 +63,14 @@ fn free_name(taken: &[(String, Vec<u8>)], wanted: &str) -> String {
 }
 
 /// A picture with everything but its panels.
-fn blank(record: &Record, plan: &Plan, file: String, title: String) -> Picture {
+fn blank(record: &Record, plan: &Plan, file: String, title: &str) -> Picture {
     let end = record.time.last().copied().unwrap_or(plan.end);
-    let tactic = plan
-        .tactic
-        .as_ref()
-        .map_or_else(String::new, |tactic| format!(" · tactic: {tactic}"));
+    let tactic = plan.tactic.as_ref().map_or_else(String::new, |tactic| {
+        format!(" · tactic: {}", spoken(tactic))
+    });
     Picture {
         file,
-        title,
+        title: spoken(title),
         subtitle: format!("{}{tactic}", plan.title),
         end: if end > 0.0 { end } else { plan.end },
         marks: marks(plan, end),
@@ -83,11 +83,11 @@ fn marks(plan: &Plan, end: f64) -> Vec<Mark> {
     for action in plan.actions.iter().filter(|action| action.time <= end) {
         match marks.last_mut() {
             Some(last) if (action.time - last.time).abs() < 0.5 => {
-                last.label = format!("{}, {}", last.label, action.name);
+                last.label = format!("{}, {}", last.label, spoken(&action.name));
             }
             _ => marks.push(Mark {
                 time: action.time,
-                label: action.name.clone(),
+                label: spoken(&action.name),
             }),
         }
     }

@@ -24,7 +24,7 @@ fn picture(record: &Record, plan: &Plan, index: usize) -> Picture {
         record,
         plan,
         format!("opening_{}", opening.name),
-        format!("Flow through {}", opening.name),
+        &format!("Flow through {}", opening.name),
     );
     let (from, to) = (space_name(plan, opening.from), space_name(plan, opening.to));
     picture.panels = vec![
@@ -75,7 +75,7 @@ fn height_panel(record: &Record, plan: &Plan, opening: &Opening, subject: Subjec
     }
     curves.push(curve(
         "neutral plane".to_owned(),
-        points(record, subject, Quantity::NeutralPlane),
+        neutral_plane(record, subject),
         INK,
         Stroke::Solid,
     ));
@@ -91,13 +91,26 @@ fn height_panel(record: &Record, plan: &Plan, opening: &Opening, subject: Subjec
     }
     Panel {
         heading: "Height above the floor [m]".to_owned(),
-        note: "no neutral plane: the flow goes one way".to_owned(),
+        note: "gaps in the line: flow goes one way".to_owned(),
         height: 170.0,
         at_least: opening.head,
         curves,
         levels,
         ..Panel::default()
     }
+}
+
+/// The neutral plane while the opening stands open; the gap of a shut leaf has
+/// none worth drawing.
+fn neutral_plane(record: &Record, subject: Subject) -> Vec<(f64, f64)> {
+    let mut plane = points(record, subject, Quantity::NeutralPlane);
+    let clear = record.get(subject, Quantity::ClearWidth);
+    for (point, clear) in plane.iter_mut().zip(clear) {
+        if *clear <= 0.0 {
+            point.1 = f64::NAN;
+        }
+    }
+    plane
 }
 
 /// Floor of the room from which the heights of the opening count, m.

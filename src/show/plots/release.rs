@@ -9,12 +9,7 @@ use crate::record::{Quantity, Record, Subject};
 
 /// Heat release with the times short of air.
 pub fn picture(record: &Record, plan: &Plan) -> Picture {
-    let mut picture = blank(
-        record,
-        plan,
-        "heat_release".to_owned(),
-        "Heat release".to_owned(),
-    );
+    let mut picture = blank(record, plan, "heat_release".to_owned(), "Heat release");
     let burned = curve(record, Quantity::Burned);
     let air = curve(record, Quantity::AirCouldBurn);
     let peak = |points: &[(f64, f64)]| {

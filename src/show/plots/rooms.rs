@@ -3,6 +3,7 @@
 use super::largest;
 use super::palette::ROOMS;
 use crate::plan::Plan;
+use crate::reading::spoken;
 use crate::record::{Quantity, Record, Subject};
 use plotters::style::RGBColor;
 
@@ -36,4 +37,18 @@ pub fn shown_rooms(record: &Record, plan: &Plan) -> Vec<ShownRoom> {
         .zip(ROOMS)
         .map(|(index, colour)| ShownRoom { index, colour })
         .collect()
+}
+
+/// Names of the rooms of the plan that are not among those shown, in words;
+/// empty when none is left out.
+pub fn left_out(plan: &Plan, shown: &[ShownRoom]) -> String {
+    let names: Vec<String> = (0..plan.rooms.len())
+        .filter(|index| shown.iter().all(|room| room.index != *index))
+        .map(|index| spoken(&plan.rooms[index].name))
+        .collect();
+    if names.is_empty() {
+        String::new()
+    } else {
+        format!("; not drawn: {}", names.join(", "))
+    }
 }

@@ -25,7 +25,7 @@ fn picture(record: &Record, plan: &Plan, index: usize) -> Picture {
         record,
         plan,
         format!("station_{}", station.name),
-        format!(
+        &format!(
             "Conditions at {}: {}, head at {:.1} m, {}",
             station.name, station.posture, station.height, plan.rooms[station.room.0].name
         ),
@@ -56,8 +56,9 @@ fn visibility(record: &Record, index: usize, limits: &Limits) -> Panel {
     let quantity = Quantity::StationVisibility;
     Panel {
         heading: "Visibility of a reflecting object [m]".to_owned(),
-        note: "30 m and more is drawn as 30 m".to_owned(),
-        at_least: 30.0,
+        note: "farther than 10 m is beyond the axis".to_owned(),
+        at_least: 10.0,
+        at_most: Some(10.0),
         levels: vec![level(quantity, limits.visibility, "limit:")],
         ..one_line(record, index, quantity, "visibility", BLUE, 110.0)
     }

@@ -2,10 +2,15 @@
 
 use super::palette::Stroke;
 use super::picture::{Curve, Level, Panel, Picture};
-use super::rooms::{ShownRoom, shown_rooms};
+use super::rooms::{ShownRoom, left_out, shown_rooms};
 use super::{blank, points};
 use crate::plan::Plan;
+use crate::reading;
 use crate::record::{Quantity, Record, Subject};
+
+/// Strength of the smoke level while the smoke reaches to the floor and the
+/// level says little.
+const FAINT: f64 = 0.45;
 
 /// Layer temperatures and smoke level of the rooms that matter.
 pub fn picture(record: &Record, plan: &Plan) -> Picture {
@@ -13,17 +18,17 @@ pub fn picture(record: &Record, plan: &Plan) -> Picture {
         record,
         plan,
         "temperatures".to_owned(),
-        "Layer temperatures and smoke level".to_owned(),
+        "Layer temperatures and smoke level",
     );
     let rooms = shown_rooms(record, plan);
     picture.panels = vec![
-        temperature_panel(record, &rooms),
+        temperature_panel(record, plan, &rooms),
         smoke_panel(record, plan, &rooms),
     ];
     picture
 }
 
-fn temperature_panel(record: &Record, rooms: &[ShownRoom]) -> Panel {
+fn temperature_panel(record: &Record, plan: &Plan, rooms: &[ShownRoom]) -> Panel {
     let mut curves = Vec::new();
     for room in rooms {
         let subject = Subject::Room(room.index);
@@ -49,7 +54,10 @@ fn temperature_panel(record: &Record, rooms: &[ShownRoom]) -> Panel {
     }
     Panel {
         heading: "Gas temperature [°C]".to_owned(),
-        note: "line: upper layer, dashes: lower layer".to_owned(),
+        note: format!(
+            "line: upper layer, dashes: lower layer{}",
+            left_out(plan, rooms)
+        ),
         height: 260.0,
         at_least: 100.0,
         curves,
@@ -58,27 +66,63 @@ fn temperature_panel(record: &Record, rooms: &[ShownRoom]) -> Panel {
 }
 
 fn smoke_panel(record: &Record, plan: &Plan, rooms: &[ShownRoom]) -> Panel {
-    let curves = rooms
-        .iter()
-        .map(|room| {
-            let subject = Subject::Room(room.index);
-            Curve {
-                label: record.name(subject).to_owned(),
-                points: points(record, subject, Quantity::Interface),
+    let summary = reading::summary(record, plan);
+    let mut curves = Vec::new();
+    let mut to_floor = false;
+    for room in rooms {
+        let subject = Subject::Room(room.index);
+        let stretches = summary
+            .rooms
+            .get(room.index)
+            .map_or(&[][..], |room| &room.smoke_to_floor);
+        let smoky = |time: f64| {
+            stretches
+                .iter()
+                .any(|stretch| time >= stretch.from && stretch.to.is_none_or(|to| time <= to))
+        };
+        let level = points(record, subject, Quantity::Interface);
+        let part = |wanted: bool| {
+            let keep = |(time, value): (f64, f64)| {
+                let value = if smoky(time) == wanted {
+                    value
+                } else {
+                    f64::NAN
+                };
+                (time, value)
+            };
+            level.iter().copied().map(keep).collect::<Vec<_>>()
+        };
+        to_floor |= !stretches.is_empty();
+        if !stretches.is_empty() {
+            curves.push(Curve {
+                label: String::new(),
+                points: part(true),
                 colour: room.colour,
-                stroke: Stroke::Solid,
+                stroke: Stroke::Dotted,
                 width: 2,
-                strength: 1.0,
-            }
-        })
-        .collect();
+                strength: FAINT,
+            });
+        }
+        curves.push(Curve {
+            label: record.name(subject).to_owned(),
+            points: part(false),
+            colour: room.colour,
+            stroke: Stroke::Solid,
+            width: 2,
+            strength: 1.0,
+        });
+    }
     let ceiling = rooms
         .iter()
         .map(|room| plan.rooms[room.index].height)
         .fold(0.0, f64::max);
     Panel {
         heading: "Smoke level above the floor [m]".to_owned(),
-        note: "dots: head heights".to_owned(),
+        note: if to_floor {
+            "dots: head heights; faint dots: smoke to the floor".to_owned()
+        } else {
+            "dots: head heights".to_owned()
+        },
         height: 150.0,
         at_least: ceiling,
         curves,

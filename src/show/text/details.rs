@@ -60,13 +60,15 @@ fn choices(page: &mut Page, plan: &Plan) {
     let used = named_values(&plan.choices);
     let defaults = named_values(&Choices::default());
     for (name, value) in used {
-        let unit = unit(&name);
         let default = defaults.iter().find(|(other, _)| *other == name);
         let changed = match default {
-            Some((_, default)) if *default != value => format!(" (default {default}{unit})"),
+            Some((_, default)) if *default != value => {
+                format!(" (default {})", with_unit(&name, default))
+            }
             _ => String::new(),
         };
-        page.entry(&spoken(&name), &format!("{value}{unit}{changed}"));
+        let value = with_unit(&name, &value);
+        page.entry(&spoken(&name), &format!("{value}{changed}"));
     }
 }
 
@@ -83,6 +85,14 @@ fn named_values(choices: &Choices) -> Vec<(String, String)> {
         .into_iter()
         .map(|(name, value)| (name, written(value)))
         .collect()
+}
+
+/// A choice with its unit; temperatures, which are kept in K, in °C.
+fn with_unit(name: &str, value: &str) -> String {
+    match (unit(name), value.parse::<f64>()) {
+        (" K", Ok(kelvin)) => format!("{:.0} °C", kelvin - 273.15),
+        (unit, _) => format!("{value}{unit}"),
+    }
 }
 
 /// Unit of a choice by its name, with a space before it.
