@@ -85,7 +85,7 @@ fn conserve_three_hundred_plans_of_moving_air() {
         &work[..5.min(work.len())]
     );
     let mut turned: Vec<_> = found.iter().map(|f| (f.2, f.0)).collect();
-    turned.sort_by(|a, b| b.0.0.cmp(&a.0.0));
+    turned.sort_by_key(|t| std::cmp::Reverse(t.0.0));
     println!("most turns: {:?}", &turned[..5.min(turned.len())]);
     println!("fired: {}", found.iter().map(|f| f.6).sum::<usize>());
     let bad: Vec<_> = found.iter().filter(|f| !f.1.is_empty()).collect();

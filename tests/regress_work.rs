@@ -1,6 +1,8 @@
 //! Work of two runs, as counts that do not depend on the machine: a change that
 //! costs steps, iterations or allocations shows here before it shows as time.
 //! A new count is taken over on purpose, with its reason in the commit.
+// Helpers outside the test functions may unwrap.
+#![allow(clippy::unwrap_used)]
 
 mod common;
 

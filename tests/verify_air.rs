@@ -1,5 +1,7 @@
 //! The ways air moves in whole runs against sums done by hand: stack, wind,
 //! fans, hatches, triggers, leaves that fall out.
+// Tables for `--nocapture`.
+#![allow(clippy::print_stdout)]
 
 mod common;
 
@@ -258,7 +260,9 @@ fn verify_working_point_of_a_fan_with_wind_on_its_outlet() {
 
 #[test]
 fn verify_a_dead_end_comes_near_the_dead_end_pressure() {
-    for (leak, within) in [(0.05, 0.5), (0.01, 0.05), (0.001, 1e-3)] {
+    // The curve is rounded within 5 % of the dead end: with next to no leak the
+    // room comes to rest up to that much beyond it (0.001 m2: 81.9 Pa by hand).
+    for (leak, within) in [(0.05, 0.5), (0.01, 0.05), (0.001, 0.025)] {
         let mut p = quiet(
             vec![room("room", 4.0, 4.0, 2.5, &wall())],
             vec![gap(0, 2.5, leak)],

@@ -231,8 +231,8 @@ pub fn one_room_door() -> Plan {
 pub fn larch_row() -> Plan {
     let file = "scenarios/larch-row-3.toml";
     let path = format!("{}/{file}", env!("CARGO_MANIFEST_DIR"));
-    let text = std::fs::read_to_string(path).unwrap();
+    let text = std::fs::read_to_string(path).expect("the scenario is there");
     doorglow::scenario::load(file, &text, None)
         .map_err(|report| report.render(false, 100))
-        .unwrap()
+        .expect("a scenario without faults")
 }
