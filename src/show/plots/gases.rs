@@ -5,6 +5,7 @@ use super::picture::{Curve, Panel, Picture};
 use super::rooms::{ShownRoom, left_out, shown_rooms};
 use super::{blank, points};
 use crate::plan::Plan;
+use crate::reading::spoken;
 use crate::record::{Quantity, Record, Subject};
 use plotters::style::RGBColor;
 
@@ -29,7 +30,7 @@ pub fn picture(record: &Record, plan: &Plan) -> Picture {
     for index in 0..plan.items.len() {
         let subject = Subject::Item(index);
         oxygen.push(curve(
-            format!("flame base, {}", record.name(subject)),
+            format!("flame base, {}", spoken(record.name(subject))),
             points(record, subject, Quantity::BaseOxygen),
             INK,
             Stroke::Dotted,
@@ -73,7 +74,7 @@ fn layers(
     }
     for room in rooms {
         let subject = Subject::Room(room.index);
-        let name = record.name(subject).to_owned();
+        let name = spoken(record.name(subject));
         let upper = points(record, subject, upper);
         curves.push(curve(name, upper, room.colour, Stroke::Solid, 2));
     }

@@ -4,6 +4,7 @@ use super::palette::{BLUE, INK, Stroke, VERMILION};
 use super::picture::{Curve, Level, Panel, Picture};
 use super::{blank, largest, points};
 use crate::plan::{Opening, OpeningKind, Plan, Space};
+use crate::reading::spoken;
 use crate::record::{Quantity, Record, Subject};
 use crate::show::words::space_name;
 use plotters::style::RGBColor;
@@ -35,13 +36,13 @@ fn picture(record: &Record, plan: &Plan, index: usize) -> Picture {
             at_least: 0.1,
             curves: vec![
                 curve(
-                    format!("{from} to {to}"),
+                    spoken(&format!("{from} to {to}")),
                     points(record, subject, Quantity::FlowForward),
                     VERMILION,
                     Stroke::Solid,
                 ),
                 curve(
-                    format!("{to} to {from}"),
+                    spoken(&format!("{to} to {from}")),
                     points(record, subject, Quantity::FlowBackward),
                     BLUE,
                     Stroke::Dashed,
@@ -64,7 +65,7 @@ fn height_panel(record: &Record, plan: &Plan, opening: &Opening, subject: Subjec
                 .map(|(time, value)| (time, value + offset))
                 .collect();
             let mut smoke = curve(
-                format!("smoke level, {}", plan.rooms[room.0].name),
+                format!("smoke level, {}", spoken(&plan.rooms[room.0].name)),
                 level,
                 colour,
                 Stroke::Dashed,
@@ -91,7 +92,7 @@ fn height_panel(record: &Record, plan: &Plan, opening: &Opening, subject: Subjec
     }
     Panel {
         heading: "Height above the floor [m]".to_owned(),
-        note: "gaps in the line: flow goes one way".to_owned(),
+        note: "gaps in the line: flow goes one way, or the leaf is shut".to_owned(),
         height: 170.0,
         at_least: opening.head,
         curves,

@@ -197,11 +197,14 @@ fn draw_heading(canvas: &mut Canvas<'_>, panel: &Panel, frame: &Frame) {
     canvas.rectangle((LEFT, y - 9.0), (LEFT + width, y + 9.0), WHITE);
     canvas.write(&panel.heading, (LEFT, y), heading);
     let mut note = panel.note.clone();
-    if panel.curves.iter().any(|curve| goes_above(curve, frame)) {
+    let beyond = panel.curves.iter().filter(|curve| goes_above(curve, frame));
+    let beyond: Vec<&str> = beyond.map(|curve| curve.label.as_str()).collect();
+    if !beyond.is_empty() {
         if !note.is_empty() {
             note.push_str("; ");
         }
-        note.push_str("↑ beyond the axis");
+        let names = beyond.join(", ");
+        note = format!("{note}↑ leaves the axis: {names}");
     }
     let width = text_width(&note, TICK_SIZE);
     if width > 0.0 {
@@ -242,7 +245,7 @@ fn curve_end(curve: &Curve, frame: &Frame) -> Option<(f64, String, Pen)> {
         return None;
     }
     let last = pieces(&curve.points, frame).pop()?.pop()?;
-    let label = if goes_above(curve, frame) {
+    let label = if ends_above(curve, frame) {
         format!("{} ↑", curve.label)
     } else {
         curve.label.clone()
@@ -253,6 +256,14 @@ fn curve_end(curve: &Curve, frame: &Frame) -> Option<(f64, String, Pen)> {
 /// True when the curve leaves the axes through the top at some time.
 fn goes_above(curve: &Curve, frame: &Frame) -> bool {
     curve.points.iter().any(|point| point.1 > frame.high)
+}
+
+/// True when the curve has left the axes through the top and not come back.
+fn ends_above(curve: &Curve, frame: &Frame) -> bool {
+    let mut values = curve.points.iter().rev().map(|point| point.1);
+    values
+        .find(|value| value.is_finite())
+        .is_some_and(|value| value > frame.high)
 }
 
 fn curve_pen(curve: &Curve) -> Pen {

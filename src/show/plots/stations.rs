@@ -56,7 +56,6 @@ fn visibility(record: &Record, index: usize, limits: &Limits) -> Panel {
     let quantity = Quantity::StationVisibility;
     Panel {
         heading: "Visibility of a reflecting object [m]".to_owned(),
-        note: "farther than 10 m is beyond the axis".to_owned(),
         at_least: 10.0,
         at_most: Some(10.0),
         levels: vec![level(quantity, limits.visibility, "limit:")],

@@ -5,7 +5,7 @@ use super::picture::{Curve, Level, Panel, Picture};
 use super::rooms::{ShownRoom, left_out, shown_rooms};
 use super::{blank, points};
 use crate::plan::Plan;
-use crate::reading;
+use crate::reading::{self, spoken};
 use crate::record::{Quantity, Record, Subject};
 
 /// Strength of the smoke level while the smoke reaches to the floor and the
@@ -44,7 +44,7 @@ fn temperature_panel(record: &Record, plan: &Plan, rooms: &[ShownRoom]) -> Panel
     for room in rooms {
         let subject = Subject::Room(room.index);
         curves.push(Curve {
-            label: record.name(subject).to_owned(),
+            label: spoken(record.name(subject)),
             points: points(record, subject, Quantity::UpperTemperature),
             colour: room.colour,
             stroke: Stroke::Solid,
@@ -104,7 +104,7 @@ fn smoke_panel(record: &Record, plan: &Plan, rooms: &[ShownRoom]) -> Panel {
             });
         }
         curves.push(Curve {
-            label: record.name(subject).to_owned(),
+            label: spoken(record.name(subject)),
             points: part(false),
             colour: room.colour,
             stroke: Stroke::Solid,
